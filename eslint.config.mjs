@@ -1,5 +1,13 @@
 import { createConfigForNuxt } from '@nuxt/eslint-config'
 
+// Node 20 lacks this one function, which the config composer of ESLint's Nuxt preset calls.
+Object.groupBy ??= (items, keyOf) => {
+  const groups = Object.create(null)
+  let index = 0
+  for (const item of items) (groups[keyOf(item, index++)] ??= []).push(item)
+  return groups
+}
+
 export default createConfigForNuxt({
   features: { stylistic: true, typescript: true },
   dirs: { src: ['./app'] },

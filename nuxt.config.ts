@@ -2,7 +2,6 @@ import { fieldChunk } from './app/field-chunk'
 
 // Lapel's one configuration. The reasons for the odd lines stand in DEVELOPERS.md, "Known surprises".
 export default defineNuxtConfig({
-  compatibilityDate: '2026-12-01',
   modules: [
     '@pinia/nuxt',
     '@nuxtjs/tailwindcss',
@@ -29,8 +28,16 @@ export default defineNuxtConfig({
     '@fontsource/atkinson-hyperlegible/latin-ext-400.css',
     '@fontsource/atkinson-hyperlegible/latin-ext-700.css',
   ],
-  tailwindcss: { cssPath: '~/assets/css/tailwind.css', viewer: false },
-  experimental: { payloadExtraction: false, emitRouteChunkError: 'manual' },
+  runtimeConfig: {
+    databaseUrl: '',
+    demo: '',
+    session: {
+      name: '__Host-sid',
+      password: '',
+      maxAge: 60 * 60 * 24 * 30,
+      cookie: { secure: true, httpOnly: true, sameSite: 'lax', path: '/' },
+    },
+  },
   routeRules: {
     '/field': { ssr: false, prerender: true },
     '/field/**': { ssr: false },
@@ -39,8 +46,13 @@ export default defineNuxtConfig({
     '/sign-in': { headers: { 'cache-control': 'no-store' } },
     '/sw.js': { headers: { 'cache-control': 'no-cache' } },
   },
+  experimental: { payloadExtraction: false, emitRouteChunkError: 'manual' },
+  compatibilityDate: '2026-12-01',
   nitro: {
     typescript: { tsConfig: { include: ['../drizzle/**/*', '../tests/server/**/*'] } },
+  },
+  vite: {
+    build: { rollupOptions: { output: { manualChunks: fieldChunk } } },
   },
   typescript: {
     strict: true,
@@ -52,15 +64,33 @@ export default defineNuxtConfig({
     loadStrategy: 'none',
     hash: { scrypt: { cost: 131072, blockSize: 8, parallelization: 1, maxMemory: 150994944 } },
   },
-  runtimeConfig: {
-    databaseUrl: '',
-    demo: '',
-    session: {
-      name: '__Host-sid',
-      password: '',
-      maxAge: 60 * 60 * 24 * 30,
-      cookie: { secure: true, httpOnly: true, sameSite: 'lax', path: '/' },
+  pwa: {
+    registerType: 'prompt',
+    manifest: {
+      id: '/field',
+      name: 'Lapel',
+      short_name: 'Lapel',
+      description: 'Field book for workplace air sampling',
+      lang: 'en',
+      start_url: '/field',
+      scope: '/',
+      display: 'standalone',
+      background_color: '#FAF8F3',
+      theme_color: '#FAF8F3',
+      icons: [
+        { src: '/icon-192.png', sizes: '192x192', type: 'image/png' },
+        { src: '/icon-512.png', sizes: '512x512', type: 'image/png' },
+        { src: '/icon-maskable-512.png', sizes: '512x512', type: 'image/png', purpose: 'maskable' },
+      ],
     },
+    workbox: {
+      globPatterns: ['**/*.{js,css,html,svg,png,woff2}'],
+      navigateFallback: '/field',
+      navigateFallbackAllowlist: [/^\/field(\/|$)/],
+      navigateFallbackDenylist: [/^\/api\//],
+      cleanupOutdatedCaches: true,
+    },
+    client: { installPrompt: true },
   },
   security: {
     corsHandler: false,
@@ -102,35 +132,5 @@ export default defineNuxtConfig({
       },
     },
   },
-  pwa: {
-    registerType: 'prompt',
-    manifest: {
-      id: '/field',
-      name: 'Lapel',
-      short_name: 'Lapel',
-      description: 'Field book for workplace air sampling',
-      lang: 'en',
-      start_url: '/field',
-      scope: '/',
-      display: 'standalone',
-      background_color: '#FAF8F3',
-      theme_color: '#FAF8F3',
-      icons: [
-        { src: '/icon-192.png', sizes: '192x192', type: 'image/png' },
-        { src: '/icon-512.png', sizes: '512x512', type: 'image/png' },
-        { src: '/icon-maskable-512.png', sizes: '512x512', type: 'image/png', purpose: 'maskable' },
-      ],
-    },
-    workbox: {
-      globPatterns: ['**/*.{js,css,html,svg,png,woff2}'],
-      navigateFallback: '/field',
-      navigateFallbackAllowlist: [/^\/field(\/|$)/],
-      navigateFallbackDenylist: [/^\/api\//],
-      cleanupOutdatedCaches: true,
-    },
-    client: { installPrompt: true },
-  },
-  vite: {
-    build: { rollupOptions: { output: { manualChunks: fieldChunk } } },
-  },
+  tailwindcss: { cssPath: '~/assets/css/tailwind.css', viewer: false },
 })
