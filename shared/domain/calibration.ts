@@ -26,7 +26,7 @@ export function meanFlow(readings: readonly number[]): number {
  * @returns deviations, %, in the order of the readings; all 0 when every reading is 0
  * @throws RangeError when there is no reading or one is negative or not finite
  * @source common practice (each reading is compared with the mean)
- * @example deviationsPercent([1.9, 2.0, 2.1]) // about [-5, 0, 5]
+ * @example deviationsPercent([1.9, 2.0, 2.1]) // [-5, 0, 5]
  */
 export function deviationsPercent(readings: readonly number[]): number[] {
   const mean = meanFlow(readings)
@@ -40,7 +40,7 @@ export function deviationsPercent(readings: readonly number[]): number[] {
  * @returns largest deviation, %, 0 or more
  * @throws RangeError when there is no reading or one is negative or not finite
  * @source common practice (readings within 5 % of the mean)
- * @example spreadPercent([1.9, 2.0, 2.1]) // about 5
+ * @example spreadPercent([1.9, 2.0, 2.1]) // 5
  */
 export function spreadPercent(readings: readonly number[]): number {
   return deviationsPercent(readings).reduce((largest, deviation) => Math.max(largest, Math.abs(deviation)), 0)

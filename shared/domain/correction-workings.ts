@@ -11,7 +11,7 @@ import type { Working } from './working'
  * @throws RangeError as `rotameterCorrectedFlow`
  * @source as `rotameterCorrectedFlow`
  * @example rotameterWorking({ indicatedLitresPerMinute: 1.7, calibrationPressureKilopascals: 99.3, calibrationTemperatureCelsius: 22,
- *   samplingPressureKilopascals: 99.3, samplingTemperatureCelsius: 22 }).result // 1.7 L/min
+ *   samplingPressureKilopascals: 99.3, samplingTemperatureCelsius: 22 }).result // { value: 1.7, unit: 'L/min' }
  */
 export function rotameterWorking(reading: RotameterInput): Working {
   return {
@@ -38,7 +38,7 @@ export function rotameterWorking(reading: RotameterInput): Working {
  * @throws RangeError as `bubbleMeterFlow`
  * @source as `bubbleMeterFlow`
  * @example bubbleMeterWorking({ bubbleLitresPerMinute: 2, pressureKilopascals: 101.325, temperatureCelsius: 25,
- *   inletRelativeHumidityPercent: 0 }).result // 1.9375 L/min
+ *   inletRelativeHumidityPercent: 0 }).result // { value: 1.9375, unit: 'L/min' }
  */
 export function bubbleMeterWorking(reading: BubbleMeterInput): Working {
   return {

@@ -11,9 +11,6 @@ export interface FlowChangeThresholds {
   stopPercent: number
 }
 
-/** Defaults of an organisation. @source common practice: use with care beyond 5 %, do not use beyond 10 % */
-export const COMMON_FLOW_CHANGE_THRESHOLDS: FlowChangeThresholds = { attentionPercent: 5, stopPercent: 10 }
-
 /**
  * Change of flow between two calibrations, in percent of the flow **before**.
  *
@@ -25,7 +22,7 @@ export const COMMON_FLOW_CHANGE_THRESHOLDS: FlowChangeThresholds = { attentionPe
  * @returns change, %, negative when the flow fell
  * @throws RangeError when a flow is outside its range
  * @source common practice: (after - before) / before, published as the "5 % rule" for flows before and after
- * @example flowChangePercent(2, 1.94) // about -3
+ * @example flowChangePercent(2, 1.94) // -3
  */
 export function flowChangePercent(before: number, after: number): number {
   requireAbove('flowChangePercent', 'before', before, 0)

@@ -52,7 +52,7 @@ export function sampledMinutes(run: Run): number {
  * @throws RangeError when a text is not an instant, or an end lies before its beginning
  * @source as `sampledMinutes`
  * @example runSpans({ startedAt: '2026-07-03T07:00:00Z', stoppedAt: '2026-07-03T09:00:00Z',
- *   pauses: [{ fromAt: '2026-07-03T08:00:00Z' }] }) // one span, 07:00 to 08:00
+ *   pauses: [{ fromAt: '2026-07-03T08:00:00Z' }] }) // [{ fromAt: '2026-07-03T07:00:00.000Z', toAt: '2026-07-03T08:00:00.000Z' }]
  */
 export function runSpans(run: Run): Span[] {
   return drawnSpans('runSpans', run).map(span => ({ fromAt: instantText(span.from), toAt: instantText(span.to) }))

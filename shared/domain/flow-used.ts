@@ -44,7 +44,8 @@ export interface FlowUsed {
  * @returns flow in L/min with its rule and reason, or null when there is nothing to go by yet
  * @throws RangeError when a number is outside its range
  * @source common practice (mean; lower beyond 5 %); nominal flow: NIOSH NMAM, method 0600
- * @example flowUsed({ before: 2, after: 1.94, useNominal: false, attentionPercent: 5 }) // 1.97 L/min, the mean
+ * @example flowUsed({ before: 2, after: 1.94, useNominal: false, attentionPercent: 5 })
+ *   // { litresPerMinute: 1.97, rule: 'mean', why: 'change-within-attention' }
  */
 export function flowUsed(input: FlowUsedInput): FlowUsed | null {
   const { before, after, nominal, useNominal, attentionPercent } = input

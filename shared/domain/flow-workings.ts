@@ -37,7 +37,7 @@ export function meanFlowWorking(readings: readonly number[], from?: string): Wor
  * @returns the working, result in %
  * @throws RangeError as `spreadPercent`
  * @source as `spreadPercent`
- * @example spreadWorking([1.9, 2.0, 2.1]).result // about 5 %
+ * @example spreadWorking([1.9, 2.0, 2.1]).result // { value: 5, unit: '%' }
  */
 export function spreadWorking(readings: readonly number[], from?: string): Working {
   return {
@@ -60,7 +60,7 @@ export function spreadWorking(readings: readonly number[], from?: string): Worki
  * @returns the working, result in % of the flow before
  * @throws RangeError as `flowChangePercent`
  * @source as `flowChangePercent`
- * @example flowChangeWorking(2, 1.94).result // about -3 %
+ * @example flowChangeWorking(2, 1.94).result // { value: -3, unit: '%' }
  */
 export function flowChangeWorking(before: number, after: number): Working {
   return {
@@ -99,7 +99,7 @@ const FLOW_USED_NOTES: Record<FlowUsedReason, string> = {
  * @returns the working, result in L/min, or null when there is nothing to go by yet
  * @throws RangeError as `flowUsed`
  * @source as `flowUsed`
- * @example flowUsedWorking({ before: 1.7, after: 1.58, useNominal: false, attentionPercent: 5 })?.result // 1.58 L/min
+ * @example flowUsedWorking({ before: 1.7, after: 1.58, useNominal: false, attentionPercent: 5 })?.result // { value: 1.58, unit: 'L/min' }
  */
 export function flowUsedWorking(flows: FlowUsedInput): Working | null {
   const used = flowUsed(flows)

@@ -98,7 +98,7 @@ export function litresToLoad(input: LoadInput): number {
  * @throws RangeError when a value is outside its range
  * @source t = load / (C × Q); NIOSH NMAM, method 0600
  * @example maximumMinutesForLoad({ maximumLoadMilligrams: 2, concentrationMilligramsPerCubicMetre: 5,
- *   flowLitresPerMinute: 2.2 }) // 181.8
+ *   flowLitresPerMinute: 2.2 }) // 181.82
  */
 export function maximumMinutesForLoad(input: LoadInput & { flowLitresPerMinute: number }): number {
   return minutesToVolume(litresToLoad(input), input.flowLitresPerMinute)

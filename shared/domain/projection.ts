@@ -65,7 +65,7 @@ export function minutesToVolume(targetLitres: number, flowLitresPerMinute: numbe
  * @throws RangeError when a number is outside its range or a text is not an instant
  * @source t = V / Q
  * @example projectVolume({ litresSoFar: 100, litresPerMinute: 2, minimumLitres: 400, nowAt: '2026-07-03T08:00:00Z' })
- *   // minimum in 150 minutes, at 10:30
+ *   // { minimum: { minutesLeft: 150, at: '2026-07-03T10:30:00.000Z' } }
  */
 export function projectVolume(input: ProjectionInput): Projection {
   const { litresSoFar, litresPerMinute, minimumLitres, maximumLitres, nowAt, plannedEndAt } = input

@@ -7,7 +7,7 @@ import { requireAbove, requireAtLeast, requireSome } from './check'
  * @returns combined uncertainty, %
  * @throws RangeError when there is no part or one is negative or not finite
  * @source NIOSH 77-173, appendix D: Ec = (E1² + E2² + ...)^0.5
- * @example combinedPercent([15, 2, 10, 10]) // 20.7
+ * @example combinedPercent([15, 2, 10, 10]) // 20.712
  */
 export function combinedPercent(partsPercent: readonly number[]): number {
   requireSome('combinedPercent', 'partsPercent', partsPercent)

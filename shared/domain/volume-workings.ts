@@ -11,7 +11,7 @@ import type { Working } from './working'
  * @returns the working, result in min
  * @throws RangeError as `sampledMinutes`
  * @source as `sampledMinutes`
- * @example sampledMinutesWorking({ startedAt: '2026-07-03T07:00:00Z', stoppedAt: '2026-07-03T09:00:00Z', pauses: [] }).result // 120 min
+ * @example sampledMinutesWorking({ startedAt: '2026-07-03T07:00:00Z', stoppedAt: '2026-07-03T09:00:00Z', pauses: [] }).result // { value: 120, unit: 'min' }
  */
 export function sampledMinutesWorking(run: Run): Working {
   return {
@@ -63,7 +63,7 @@ export function sampledVolumeWorking(flowLitresPerMinute: number, minutes: numbe
  * @returns the working, result in L
  * @throws RangeError as `segmentedVolume`
  * @source as `segmentedVolume`
- * @example segmentedVolumeWorking([{ litresPerMinute: 2, minutes: 240 }, { litresPerMinute: 1.9, minutes: 210 }]).result // 879 L
+ * @example segmentedVolumeWorking([{ litresPerMinute: 2, minutes: 240 }, { litresPerMinute: 1.9, minutes: 210 }]).result // { value: 879, unit: 'L' }
  */
 export function segmentedVolumeWorking(segments: readonly Segment[]): Working {
   return {
@@ -138,7 +138,7 @@ export function minutesLeftWorking(litresSoFar: number, targetLitres: number, fl
  * @throws RangeError as `shiftCoverage`
  * @source as `shiftCoverage`
  * @example shiftCoverageWorking({ fromAt: '2026-07-03T06:00:00Z', toAt: '2026-07-03T14:00:00Z' },
- *   [{ fromAt: '2026-07-03T07:00:00Z', toAt: '2026-07-03T14:00:00Z' }]).result // 87.5 %
+ *   [{ fromAt: '2026-07-03T07:00:00Z', toAt: '2026-07-03T14:00:00Z' }]).result // { value: 87.5, unit: '%' }
  */
 export function shiftCoverageWorking(shift: Span, spans: readonly Span[]): Working {
   const coverage = shiftCoverage(shift, spans)

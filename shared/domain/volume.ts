@@ -38,7 +38,7 @@ export function sampledVolume(flowLitresPerMinute: number, sampledMinutes: numbe
  * @returns volume in L, and the minutes it was drawn in; both 0 without segments
  * @throws RangeError when a value is negative or not finite
  * @source V = sum of Q t over the segments
- * @example segmentedVolume([{ litresPerMinute: 2, minutes: 240 }, { litresPerMinute: 1.9, minutes: 210 }]) // 879 L in 450 min
+ * @example segmentedVolume([{ litresPerMinute: 2, minutes: 240 }, { litresPerMinute: 1.9, minutes: 210 }]) // { litres: 879, minutes: 450 }
  */
 export function segmentedVolume(segments: readonly Segment[]): SegmentedVolume {
   let litres = 0
