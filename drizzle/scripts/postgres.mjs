@@ -49,7 +49,7 @@ const NO_SYSTEM_CLUSTER = 'mkdir -p /etc/postgresql-common && touch /etc/postgre
  * Starts the cluster unless it runs, makes it when there is none, and takes a lease on it for this process.
  * @param {{ who: string, keep?: boolean, say?: (line: string) => void }} options
  *   `who` is named to a person who wants to stop the cluster; `keep` leaves it running after this process
- * @returns {Promise<DatabaseUrls & { startedHere: boolean }>} the addresses of the main database
+ * @returns {Promise<DatabaseUrls & { startedHere: boolean, serverPid: number, log: string }>} the addresses of the main database
  * @throws {Explained} with a sentence for the person when it cannot be had
  */
 export async function startCluster({ who, keep = false, say = () => {} }) {
@@ -84,7 +84,7 @@ export async function startCluster({ who, keep = false, say = () => {} }) {
       if (startedHere && otherLeases().length === 0) await stopServer(binaries, folder)
       throw error
     }
-    return { ...databaseUrls(MAIN_DATABASE), startedHere }
+    return { ...databaseUrls(MAIN_DATABASE), startedHere, serverPid: readPidNote(folder)?.pid ?? 0, log: join(folder, 'server.log') }
   }, () => say('Waiting for another start of the database'))
 }
 
