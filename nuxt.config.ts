@@ -56,7 +56,7 @@ export default defineNuxtConfig({
   },
   typescript: {
     strict: true,
-    nodeTsConfig: { include: ['../*.config.ts', '../tests/e2e/**/*', '../tests/bench/**/*', '../tests/screens/**/*', '../app/field-chunk.ts'] },
+    nodeTsConfig: { include: ['../*.config.ts', '../tests/*.mjs', '../tests/e2e/**/*', '../tests/bench/**/*', '../tests/screens/**/*', '../app/field-chunk.ts'] },
     sharedTsConfig: { include: ['../tests/unit/**/*', '../tests/fixtures/**/*'] },
   },
   auth: {
