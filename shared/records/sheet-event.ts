@@ -3,6 +3,7 @@ import { flowSchema, idSchema, instantSchema, lineSchema, measureSchema, textSch
 
 export const FLOW_UNITS = ['L/min', 'mL/min'] as const
 export const flowUnitSchema = z.enum(FLOW_UNITS)
+export type FlowUnit = (typeof FLOW_UNITS)[number]
 
 /** What was typed stays beside the number that was read from it. */
 const typedFlow = {
@@ -44,6 +45,7 @@ export const flowCheckSchema = z.object({
 })
 
 export const PUMP_FAULTS = ['stopped', 'flow-blocked', 'battery', 'tubing-off', 'other'] as const
+export type PumpFault = (typeof PUMP_FAULTS)[number]
 export const pumpFaultSchema = z.object({
   pumpId: idSchema,
   fault: z.enum(PUMP_FAULTS),
