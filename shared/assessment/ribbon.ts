@@ -89,7 +89,7 @@ const BRACKET_ROW_WITH_WORDS = 17
 const HEIGHT_FOR_LABELS = 36
 const HEIGHT_FOR_WORDS = 56
 const NOTCH = 6
-const LABEL_ROOM = 64
+const LABEL_ROOM = 72
 const HALF_LABEL = 18
 const TICK_STEPS = [15 * MINUTE, 30 * MINUTE, HOUR, 2 * HOUR, 3 * HOUR, 4 * HOUR, 6 * HOUR, 12 * HOUR, 24 * HOUR]
 
@@ -233,12 +233,12 @@ function toCome(times: Times, frame: Frame, x: Scale, band: Band): RibbonShape[]
   return to > from ? [{ kind: 'dashed', ...box({ from, to }, x, band, 0) }] : []
 }
 
-function airDrawn({ spans }: Times, x: Scale, band: Band): RibbonShape[] {
+function airDrawn({ spans, isOngoing }: Times, x: Scale, band: Band): RibbonShape[] {
   return spans.flatMap((span, place): RibbonShape[] => {
     const piece = box(span, x, band)
     const before = spans[place - 1]
     const isLast = place === spans.length - 1
-    const notch = isLast && !span.isOpen ? Math.min(NOTCH, piece.width, piece.height / 2) : 0
+    const notch = isLast && !isOngoing ? Math.min(NOTCH, piece.width, piece.height / 2) : 0
     const solid: RibbonShape = { kind: 'solid', ...piece, pumpId: span.pumpId, notch }
     const isOtherPump = before !== undefined && before.pumpId !== span.pumpId
     return isOtherPump ? [solid, { kind: 'seam', x: piece.x, fromY: band.y, toY: band.y + band.height }] : [solid]

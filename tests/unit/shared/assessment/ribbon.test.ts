@@ -59,6 +59,8 @@ describe('a ribbon', () => {
     }
     expect(ofKind(stopped, 'solid')).toEqual([{ kind: 'solid', x: MARGIN, y: 8, width: 360, height: 16, pumpId: null, notch: 6 }])
     expect(ofKind(stopped, 'dashed')).toEqual([])
+    const paused: RibbonInput = { ...stopped, pauses: [{ fromAt: '2026-07-03T12:00:00Z', toAt: null, reason: null }] }
+    expect(ofKind(paused, 'solid')).toMatchObject([{ notch: 0 }])
     expect(ofKind(stopped, 'now')).toEqual([])
   })
 
