@@ -2,7 +2,7 @@
 export const THEMES = ['day', 'sun'] as const
 export type Theme = typeof THEMES[number]
 
-const THEME_KEY = 'lapel-theme'
+export const THEME_KEY = 'lapel-theme'
 
 /** How this person likes Lapel on this device. */
 export const usePreferencesStore = defineStore('preferences', () => {
