@@ -94,7 +94,8 @@ function drawnSpans(where: string, run: Run): MillisecondSpan[] {
   const drawn: MillisecondSpan[] = []
   let from = start
   for (const pause of pauses) {
-    if (pause.to <= start || pause.from >= stop) continue
+    const takesNothingOff = pause.to === pause.from || pause.to <= start || pause.from >= stop
+    if (takesNothingOff) continue
     if (pause.from > from) drawn.push({ from, to: pause.from })
     from = Math.min(pause.to, stop)
   }
