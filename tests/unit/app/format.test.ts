@@ -1,7 +1,5 @@
 import { describe, expect, it } from 'vitest'
 import { formatAgo, formatClockOff, formatCount, formatDays, formatDuration, formatFlow, formatInstant, formatPercent, formatQuantity, formatTime, formatVolume, formatWeekday, formatZone, inWords, withLocalTimes } from '../../../app/utils/format'
-import { workingView } from '../../../app/utils/working-view'
-import { sampledMinutesWorking } from '../../../shared/domain/volume-workings'
 
 describe('numbers for eyes', () => {
   it('shows a flow to four figures in the unit that was asked for', () => {
@@ -74,13 +72,5 @@ describe('times for eyes', () => {
 
   it('puts every instant of a sentence into the zone', () => {
     expect(withLocalTimes('2026-07-03T06:02:00Z to 2026-07-03T07:00:00.500Z', 'Europe/London')).toBe('3 Jul 2026, 07:02:00 to 3 Jul 2026, 08:00:00')
-  })
-})
-
-describe('a working for eyes', () => {
-  it('shows the minutes with their start and stop on the wall clock', () => {
-    const view = workingView(sampledMinutesWorking({ startedAt: '2026-07-03T06:00:00Z', stoppedAt: '2026-07-03T08:00:00Z', pauses: [] }), 'Europe/London')
-    expect(view.inputs[0]).toEqual({ label: 'start (timer)', value: '3 Jul 2026, 07:00:00', unit: undefined })
-    expect(view.result).toEqual({ value: '120', unit: 'min' })
   })
 })
