@@ -136,10 +136,14 @@ export function indicatorAccuracyWorking(accuracy: IndicatorAccuracy, flowLitres
   const at = accuracyPercentAt(accuracy, flowLitresPerMinute)
   if (at.outside) return null
   const flow = input('flow', flowLitresPerMinute, 'L/min')
+  const amount = input('the same as an amount', at.litresPerMinute, '± L/min', 'this working')
   const shared = { title: 'Accuracy of the flow indicator', result: { value: at.percent, unit: '%' }, source: 'the maker\'s statement' }
-  const note = `This is ± ${at.litresPerMinute} L/min.`
   if (accuracy.kind === 'percent-of-reading') {
-    return { ...shared, formula: 'percent of the reading for the range this flow lies in', inputs: [flow, input('accuracy of the range', at.percent, '% of reading', 'the maker')], note }
+    return {
+      ...shared,
+      formula: 'percent of the reading for the range this flow lies in',
+      inputs: [flow, input('accuracy of the range', at.percent, '% of reading', 'the maker'), amount],
+    }
   }
   return {
     ...shared,
@@ -148,8 +152,9 @@ export function indicatorAccuracyWorking(accuracy: IndicatorAccuracy, flowLitres
       input('accuracy', accuracy.percent, '% of full scale', 'the maker'),
       input('full scale', accuracy.fullScaleLitresPerMinute, 'L/min', 'the maker'),
       flow,
+      amount,
     ],
-    note: `${note} The amount stays the same down the scale, so its share grows as the flow gets smaller.`,
+    note: 'The amount stays the same down the scale, so its share grows as the flow gets smaller.',
   }
 }
 

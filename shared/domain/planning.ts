@@ -123,7 +123,7 @@ export function blanksNeeded(samples: number, rule: BlanksRule): number {
   if (rule.maximum != null) requireWhole('blanksNeeded', 'maximum', rule.maximum, 0)
   if (maximum < rule.minimum) refuse('blanksNeeded', 'maximum', `minimum (${rule.minimum}) or more`, maximum)
   if (samples === 0) return 0
-  // Without the slack, 7 % of 100 samples would be 7.000000000000001 and ask for an eighth blank.
+  // Without the slack, 8.8 % of 375 samples would be 33.00000000000001 and ask for one blank more.
   const share = Math.ceil(samples * rule.percent / 100 - 1e-9)
   return Math.min(Math.max(share, rule.minimum), maximum)
 }

@@ -107,14 +107,15 @@ export function diffusiveVolumeWorking(uptakeMillilitresPerMinute: number, minut
  * Working of the minutes of air that are left until a volume is reached.
  *
  * @param litresSoFar volume drawn, L, 0 or more
- * @param targetLitres volume wanted, L, not below the volume drawn
- * @param flowLitresPerMinute flow from now on, L/min, above 0
- * @returns the working, result in min
+ * @param targetLitres volume wanted, L, 0 or more
+ * @param flowLitresPerMinute flow from now on, L/min, 0 or more
+ * @returns the working, result in min, or null when the volume is reached already or the pump draws nothing
  * @throws RangeError as `minutesToVolume`
  * @source as `minutesToVolume`
- * @example minutesLeftWorking(100, 400, 2).result // { value: 150, unit: 'min' }
+ * @example minutesLeftWorking(100, 400, 2)?.result // { value: 150, unit: 'min' }
  */
-export function minutesLeftWorking(litresSoFar: number, targetLitres: number, flowLitresPerMinute: number): Working {
+export function minutesLeftWorking(litresSoFar: number, targetLitres: number, flowLitresPerMinute: number): Working | null {
+  if (litresSoFar >= targetLitres || flowLitresPerMinute === 0) return null
   return {
     title: 'Minutes left',
     formula: '(volume wanted - volume so far) / flow',

@@ -87,6 +87,8 @@ describe('shown workings', () => {
   it('are none where there is no number', () => {
     expect(flowUsedWorking({ useNominal: false, attentionPercent: 5 })).toBeNull()
     expect(indicatorAccuracyWorking(COMMON_LAMINAR_FLOW_ACCURACY, 9)).toBeNull()
+    expect(minutesLeftWorking(400, 400, 2)).toBeNull()
+    expect(minutesLeftWorking(100, 400, 0)).toBeNull()
   })
 
   it('do not fail on a pump that has died', () => {
