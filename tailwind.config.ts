@@ -51,8 +51,8 @@ export default {
     extend: {
       borderWidth: { hair: 'var(--hairline)', edge: 'var(--edge)' },
       // control: a button or field of this room; target and primary: the field's sizes wherever they are used.
-      minHeight: { control: 'var(--control)', target: '4rem', primary: '4.5rem' },
-      minWidth: { control: 'var(--control)', target: '4rem' },
+      minHeight: { control: 'var(--control)', small: 'var(--control-small)', target: '4rem', primary: '4.5rem' },
+      minWidth: { control: 'var(--control)', small: 'var(--control-small)', target: '4rem' },
       height: { control: 'var(--control)' },
       maxWidth: { measure: '38rem' },
       keyframes: {

@@ -69,7 +69,7 @@ describe('UiWorking', () => {
     const shown = await mountSuspended(UiWorking, { props: { working, zone: 'Europe/London', open: true } })
     expect(shown.text()).toContain(working.formula)
     expect(shown.text()).toContain(`Source: ${working.source}`)
-    expect(shown.findAll('dd').map(one => one.text())).toEqual(['07:02', '08:02', '60 min', '60 min'])
+    expect(shown.findAll('dd').map(one => one.text())).toEqual(['3 Jul 2026, 07:02:00', '3 Jul 2026, 08:02:00', '60 min', '60 min'])
   })
 })
 
