@@ -45,9 +45,25 @@ export interface FlowSummary {
 
 export interface CheckSummary {
   event: SheetEventOf<'flow-check'>
+  /** The flow it is compared with: read before, or set in mid-run; null when neither is known. */
+  setLitresPerMinute: number | null
+  /** As read; for a rotameter at the conditions of sampling, where they are known. Null when no flow was read. */
+  litresPerMinute: number | null
+  isCorrected: boolean
   /** Away from the flow that was set, in percent of it; null when no flow was read. */
   percent: number | null
   verdict: 'within' | 'attention' | 'stop' | null
+}
+
+/** What was read of one pump. The means are as read; `change` and the flow used are of `beforeFlow` and `afterFlow`. */
+export interface PumpFlows {
+  pumpId: string
+  before: FlowSummary | null
+  after: FlowSummary | null
+  /** As read, or at the conditions of sampling for a rotameter whose conditions are known. */
+  beforeLitresPerMinute: number | null
+  afterLitresPerMinute: number | null
+  isCorrected: boolean
 }
 
 /** A stretch of the run with one pump at one setting. */
@@ -56,10 +72,11 @@ export interface FlowSegment {
   fromAt: string
   toAt: string
   minutes: number
-  litresPerMinute: number
+  /** Null when nothing was read of its pump: then there is no volume either. */
+  litresPerMinute: number | null
   /** Which flow stands for the segment and why. */
   rule: string
-  litres: number
+  litres: number | null
 }
 
 export interface SheetAssessment {
@@ -73,8 +90,10 @@ export interface SheetAssessment {
   sampledMinutes: number | null
   /** The pump that draws now or drew last. */
   currentPumpId: string | null
+  /** Of the current pump; `pumps` has every pump's. */
   flowBefore: FlowSummary | null
   flowAfter: FlowSummary | null
+  pumps: PumpFlows[]
   /** Change of flow, (after - before) / before, of the pump that was read both times. */
   change: { percent: number, verdict: 'within' | 'attention' | 'stop' } | null
   flowUsed: { litresPerMinute: number, rule: 'mean' | 'lower' | 'nominal' | 'before-only' | 'after-only', why: string } | null
@@ -92,10 +111,10 @@ export interface SheetAssessment {
   findings: Finding[]
   gaps: Gap[]
   canHandInAsFit: boolean
-  /** Every computed number explains itself; keys: mean-before, mean-after, change, flow-used, minutes, volume, accuracy, projection, coverage. */
+  /** Every computed number explains itself; see `WORKING_KEYS`. */
   workings: Partial<Record<WorkingKey, Working>>
   ribbon: RibbonInput
 }
 
-export const WORKING_KEYS = ['mean-before', 'mean-after', 'change', 'flow-used', 'minutes', 'volume', 'accuracy', 'projection', 'coverage'] as const
+export const WORKING_KEYS = ['mean-before', 'mean-after', 'change', 'correction', 'flow-used', 'minutes', 'volume', 'accuracy', 'projection', 'coverage'] as const
 export type WorkingKey = (typeof WORKING_KEYS)[number]
