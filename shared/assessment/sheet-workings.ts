@@ -96,5 +96,5 @@ function projectionWorking(facts: SheetFacts): Working | null {
   const target = [range.minimumLitres, range.maximumLitres].find(litres => litres !== null && litres > volumeLitres)
   if (target == null) return null
   const working = minutesLeftWorking(volumeLitres, target, flow)
-  return { ...working, note: `From ${instantText(now)}. ${working.note ?? ''}`.trim() }
+  return working && { ...working, note: `From ${instantText(now)}. ${working.note ?? ''}`.trim() }
 }
