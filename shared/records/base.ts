@@ -28,3 +28,6 @@ export const measureSchema = z.number()
 
 /** A flow in L/min: above 0 and below what any sampling pump moves. */
 export const flowSchema = z.number().positive().max(1000)
+
+/** A flow as it was read, L/min: 0 is a reading too, of a pump that stands still. */
+export const readFlowSchema = z.number().min(0).max(1000)

@@ -1,5 +1,5 @@
 import * as z from 'zod'
-import { flowSchema, idSchema, instantSchema, lineSchema, measureSchema, textSchema } from './base'
+import { flowSchema, idSchema, instantSchema, lineSchema, measureSchema, readFlowSchema, textSchema } from './base'
 
 export const FLOW_UNITS = ['L/min', 'mL/min'] as const
 export const flowUnitSchema = z.enum(FLOW_UNITS)
@@ -9,7 +9,7 @@ export type FlowUnit = (typeof FLOW_UNITS)[number]
 const typedFlow = {
   typed: z.string().min(1).max(40),
   unit: flowUnitSchema,
-  litresPerMinute: flowSchema,
+  litresPerMinute: readFlowSchema,
 }
 
 /** One reading of the pump's flow against a calibrator, before or after the run. */
@@ -39,7 +39,7 @@ export const flowCheckSchema = z.object({
   calibratorId: idSchema.nullable().default(null),
   typed: z.string().max(40),
   unit: flowUnitSchema,
-  litresPerMinute: flowSchema.nullable(),
+  litresPerMinute: readFlowSchema.nullable(),
   pumpMinutes: z.number().min(0).max(100_000).nullable().default(null),
   note: lineSchema.nullable().default(null),
 })
@@ -62,7 +62,7 @@ export const pumpSwapSchema = z.object({
 /** The flow was set anew in mid-run: what it was found at, and what it was set to. */
 export const flowResetSchema = z.object({
   pumpId: idSchema,
-  fromLitresPerMinute: flowSchema.nullable(),
+  fromLitresPerMinute: readFlowSchema.nullable(),
   toLitresPerMinute: flowSchema,
   typed: z.string().min(1).max(40),
   unit: flowUnitSchema,

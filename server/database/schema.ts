@@ -1,0 +1,12 @@
+// The one gathering file: Drizzle needs it.
+export * from './tables/organisations'
+export * from './tables/users'
+export * from './tables/sessions'
+export * from './tables/sign-in-attempts'
+export * from './tables/org-clock'
+export * from './tables/op'
+export * from './tables/row-state'
+export * from './tables/grant-scope'
+export * from './tables/device'
+export * from './tables/sheets'
+export * from './tables/surveys'

@@ -1,0 +1,165 @@
+import { and, eq, inArray, sql } from 'drizzle-orm'
+import { can, type Actor } from '#shared/access/policy'
+import { RECORD_SCOPES, type RecordKind } from '#shared/records/kinds'
+import type { SheetState } from '#shared/records/sheet-state'
+import { held, merge, rowKeysOf, type StepGuard } from '#shared/sync/merge'
+import type { OperationOf, StampedOperation } from '#shared/sync/operations'
+import type { Outcome } from '#shared/sync/outcomes'
+import type { ObjectData, Row, RowChange, RowType, SetData } from '#shared/sync/rows'
+import type { Transaction } from '#server/database/client'
+import { rowState } from '#server/database/tables/row-state'
+import { grantScope } from '#server/database/tables/grant-scope'
+import { blockingFindings } from './blocking-findings'
+import { projectRows } from './project/project-rows'
+
+export interface Applied { outcome: Outcome, reason: string | null, detail: string | null }
+
+export interface ApplyContext {
+  actor: Actor
+  /** The version that everything written here carries; the organisation's counter is held by the caller. */
+  ver: number
+  /** The instant of receipt. */
+  receivedAt: string
+}
+
+/**
+ * Applies operations in their order: merges each into the rows, stamps them with one version, and keeps grants and
+ * projections in step. The organisation's counter row must be locked by the same transaction.
+ *
+ * @returns one answer an operation, in the same order; none of them stops the others (PUSH5)
+ */
+export async function applyOperations(tx: Transaction, context: ApplyContext, operations: readonly StampedOperation[]): Promise<Applied[]> {
+  const organisation = context.actor.organisationId
+  const rows = await loadRows(tx, organisation, operations)
+  const crews = await loadGrants(tx, context.actor)
+  const changed = new Map<string, RowChange>()
+  const read = (t: RowType, id: string) => rows.get(`${t} ${id}`)
+  const write = (row: RowChange) => {
+    rows.set(`${row.t} ${row.id}`, row)
+    changed.set(`${row.t} ${row.id}`, row)
+    if (row.t === 'set' && row.data.set === 'crew' && row.data.element === context.actor.id) crews[row.data.isPresent ? 'add' : 'delete'](row.object)
+  }
+  const guards = await loadGuards(tx, organisation, operations, rows)
+
+  const answers: Applied[] = []
+  for (const operation of operations) {
+    const result = applyOne(operation, read, context, crews, guards)
+    for (const row of result.rows) write(row)
+    answers.push({
+      outcome: result.outcome,
+      reason: result.reason,
+      detail: result.outcome === 'held' ? result.detail : null,
+    })
+  }
+
+  const writes = [...changed.values()]
+  await storeRows(tx, organisation, writes, context.ver)
+  await storeGrants(tx, organisation, writes, context.ver)
+  await projectRows(tx, organisation, writes, context.ver)
+  return answers
+}
+
+function applyOne(operation: StampedOperation, read: (t: RowType, id: string) => RowChange | Row | undefined, context: ApplyContext, crews: Set<string>, guards: Guards): ReturnType<typeof merge> {
+  const organisation = context.actor.organisationId
+  try {
+    const refusal = refuseByRights(operation, read, context, crews)
+    if (refusal) return held(operation, refusal.reason, null, refusal.scope)
+    return merge(operation, read, organisation, stepGuard(context.actor, read, crews, guards))
+  }
+  catch (error) {
+    // Only a fault of ours gets here: the operation is kept and shown, the others go on.
+    console.error(`Operation ${operation.id} could not be merged: ${error instanceof Error ? error.message : String(error)}`)
+    return held(operation, 'error', null, read('obj', operation.object)?.scope ?? organisation)
+  }
+}
+
+/** Rights at receipt: what the person may write now, whatever was allowed when it was written. */
+function refuseByRights(operation: StampedOperation, read: (t: RowType, id: string) => RowChange | undefined, context: ApplyContext, crews: Set<string>): { reason: 'no-access' | 'not-allowed', scope: string } | null {
+  const organisation = context.actor.organisationId
+  const target = read('obj', operation.object)
+  const creation = operation.kind === 'obj.new' && !target ? operation as OperationOf<'obj.new'> : null
+  if (!target && !creation) return null
+  const kind = (creation ? creation.body.type : (target!.data as unknown as ObjectData).type) as RecordKind
+  const scope = target?.scope ?? (RECORD_SCOPES[kind] === 'survey' ? creation!.body.parent ?? operation.object : organisation)
+  if (operation.kind === 'st.req') return null
+  if (creation && RECORD_SCOPES[kind] === 'survey' && kind !== 'survey' && !isSurvey(read('obj', scope))) return { reason: 'no-access', scope: organisation }
+  const isInCrew = scope === organisation ? undefined : crews.has(scope)
+  const action = { do: creation ? 'create' : 'change', kind } as const
+  if (can(context.actor, action, { isInCrew })) return null
+  // The held change is shown where it belongs, never in a survey that its author cannot see.
+  return { reason: isInCrew === false ? 'no-access' : 'not-allowed', scope }
+}
+
+function isSurvey(row: RowChange | undefined): boolean {
+  return (row?.data as unknown as ObjectData | undefined)?.type === 'survey'
+}
+
+function stepGuard(actor: Actor, read: (t: RowType, id: string) => RowChange | undefined, crews: Set<string>, guards: Guards): StepGuard {
+  return (operation, state) => {
+    const scope = read('obj', operation.object)?.scope
+    const subject = { state: state as SheetState, isInCrew: scope !== undefined && crews.has(scope) }
+    if (!can(actor, { do: 'step', transition: operation.body.transition }, subject)) return 'not-allowed'
+    return guards.get(operation.object)?.(operation, read) ?? null
+  }
+}
+
+type Guards = Awaited<ReturnType<typeof loadGuards>>
+
+/** For sheets that are handed in or accepted as fit in this batch: the findings that stand against it. */
+async function loadGuards(tx: Transaction, organisation: string, operations: readonly StampedOperation[], rows: Map<string, RowChange>) {
+  const sheetIds = [...new Set(operations
+    .filter(operation => operation.kind === 'st.req' && ['hand-in', 'accept'].includes(operation.body.transition) && operation.body.fit === true)
+    .map(operation => operation.object))]
+  return blockingFindings(tx, organisation, sheetIds, rows)
+}
+
+async function loadRows(tx: Transaction, organisation: string, operations: readonly StampedOperation[]): Promise<Map<string, RowChange>> {
+  const keys = new Map<string, [RowType, string]>()
+  const add = (t: RowType, id: string) => keys.set(`${t} ${id}`, [t, id])
+  for (const operation of operations) {
+    for (const [t, id] of rowKeysOf(operation)) add(t, id)
+    if (operation.kind === 'obj.new' && operation.body.parent) add('obj', operation.body.parent)
+  }
+  if (keys.size === 0) return new Map()
+  const types = [...keys.values()].map(([t]) => t)
+  const ids = [...keys.values()].map(([, id]) => id)
+  const found = await tx.execute<Row & { object: string }>(sql`
+    select r.t, r.id, r.scope, r.object, r.ver::int as ver, r.gone, r.data
+    from unnest(${sql.param(types)}::text[], ${sql.param(ids)}::text[]) as k(t, id)
+    join row_state r on r.organisation = ${organisation} and r.t = k.t and r.id = k.id`)
+  return new Map(found.rows.map(row => [`${row.t} ${row.id}`, row]))
+}
+
+/** Surveys whose crew the person is in; a reviewer sees every survey, see `scopesOf`. */
+async function loadGrants(tx: Transaction, actor: Actor): Promise<Set<string>> {
+  const grants = await tx.select({ scope: grantScope.scope }).from(grantScope)
+    .where(and(eq(grantScope.organisation, actor.organisationId), eq(grantScope.person, actor.id), eq(grantScope.gone, false)))
+  return new Set(grants.map(grant => grant.scope))
+}
+
+/** One statement for all rows, whatever their number. */
+async function storeRows(tx: Transaction, organisation: string, rows: readonly RowChange[], ver: number): Promise<void> {
+  if (rows.length === 0) return
+  await tx.execute(sql`
+    insert into ${rowState} (organisation, t, id, scope, object, ver, gone, data)
+    select ${organisation}::uuid, x.t, x.id, x.scope, x.object, ${ver}::bigint, x.gone, x.data
+    from jsonb_to_recordset(${JSON.stringify(rows)}::jsonb) as x(t text, id text, scope uuid, object uuid, gone boolean, data jsonb)
+    on conflict (organisation, t, id) do update set scope = excluded.scope, object = excluded.object, ver = excluded.ver, gone = excluded.gone, data = excluded.data`)
+}
+
+/** The crew of a survey is who may see it. */
+async function storeGrants(tx: Transaction, organisation: string, rows: readonly RowChange[], ver: number): Promise<void> {
+  for (const row of rows) {
+    const data = row.data as unknown as SetData
+    if (row.t !== 'set' || data.set !== 'crew') continue
+    await tx.insert(grantScope).values({ organisation, person: data.element, scope: row.object, ver, gone: !data.isPresent })
+      .onConflictDoUpdate({ target: [grantScope.organisation, grantScope.person, grantScope.scope], set: { ver, gone: !data.isPresent } })
+  }
+}
+
+/** Rows of whole records, for assessments and projections. */
+export async function rowsOfObjects(tx: Transaction, organisation: string, objects: readonly string[]): Promise<Row[]> {
+  if (objects.length === 0) return []
+  const found = await tx.select().from(rowState).where(and(eq(rowState.organisation, organisation), inArray(rowState.object, [...objects])))
+  return found
+}
