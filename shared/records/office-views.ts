@@ -20,6 +20,9 @@ export const signedInSchema = z.object({
 })
 export type SignedIn = z.infer<typeof signedInSchema>
 
+export const sheetParamsSchema = z.strictObject({ sheetId: idSchema })
+export const surveyParamsSchema = z.strictObject({ surveyId: idSchema })
+
 const pageSchema = z.coerce.number().int().min(1).max(10_000).default(1)
 
 /** GET /api/sheets: filters of the review queue, kept in the page's address. */
