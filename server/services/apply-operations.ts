@@ -1,7 +1,6 @@
 import { and, eq, inArray, sql } from 'drizzle-orm'
 import { can, type Actor } from '#shared/access/policy'
 import { RECORD_SCOPES, type RecordKind } from '#shared/records/kinds'
-import type { SheetState } from '#shared/records/sheet-state'
 import { held, merge, rowKeysOf, type StepGuard } from '#shared/sync/merge'
 import type { OperationOf, StampedOperation } from '#shared/sync/operations'
 import type { Outcome } from '#shared/sync/outcomes'
@@ -9,8 +8,8 @@ import type { ObjectData, Row, RowChange, RowType, SetData } from '#shared/sync/
 import type { Transaction } from '#server/database/client'
 import { rowState } from '#server/database/tables/row-state'
 import { grantScope } from '#server/database/tables/grant-scope'
-import { blockingFindings } from './blocking-findings'
 import { projectRows } from './project/project-rows'
+import { loadStepCheck, type StepCheck } from './step-check'
 
 export interface Applied { outcome: Outcome, reason: string | null, detail: string | null }
 
@@ -39,11 +38,11 @@ export async function applyOperations(tx: Transaction, context: ApplyContext, op
     changed.set(`${row.t} ${row.id}`, row)
     if (row.t === 'set' && row.data.set === 'crew' && row.data.element === context.actor.id) crews[row.data.isPresent ? 'add' : 'delete'](row.object)
   }
-  const guards = await loadGuards(tx, organisation, operations, rows)
+  const check = await loadStepCheck(tx, organisation, operations, rows)
 
   const answers: Applied[] = []
   for (const operation of operations) {
-    const result = applyOne(operation, read, context, crews, guards)
+    const result = applyOne(operation, read, context, crews, check)
     for (const row of result.rows) write(row)
     answers.push({
       outcome: result.outcome,
@@ -59,12 +58,12 @@ export async function applyOperations(tx: Transaction, context: ApplyContext, op
   return answers
 }
 
-function applyOne(operation: StampedOperation, read: (t: RowType, id: string) => RowChange | Row | undefined, context: ApplyContext, crews: Set<string>, guards: Guards): ReturnType<typeof merge> {
+function applyOne(operation: StampedOperation, read: (t: RowType, id: string) => RowChange | Row | undefined, context: ApplyContext, crews: Set<string>, check: StepCheck): ReturnType<typeof merge> {
   const organisation = context.actor.organisationId
   try {
     const refusal = refuseByRights(operation, read, context, crews)
     if (refusal) return held(operation, refusal.reason, null, refusal.scope)
-    return merge(operation, read, organisation, stepGuard(context.actor, read, crews, guards))
+    return merge(operation, read, organisation, stepGuard(context, read, crews, check))
   }
   catch (error) {
     // Only a fault of ours gets here: the operation is kept and shown, the others go on.
@@ -94,23 +93,13 @@ function isSurvey(row: RowChange | undefined): boolean {
   return (row?.data as unknown as ObjectData | undefined)?.type === 'survey'
 }
 
-function stepGuard(actor: Actor, read: (t: RowType, id: string) => RowChange | undefined, crews: Set<string>, guards: Guards): StepGuard {
+function stepGuard(context: ApplyContext, read: (t: RowType, id: string) => RowChange | undefined, crews: Set<string>, check: StepCheck): StepGuard {
   return (operation, state) => {
     const scope = read('obj', operation.object)?.scope
-    const subject = { state: state as SheetState, isInCrew: scope !== undefined && crews.has(scope) }
-    if (!can(actor, { do: 'step', transition: operation.body.transition }, subject)) return 'not-allowed'
-    return guards.get(operation.object)?.(operation, read) ?? null
+    const subject = { state, isInCrew: scope !== undefined && crews.has(scope) }
+    if (!can(context.actor, { do: 'step', transition: operation.body.transition }, subject)) return 'not-allowed'
+    return check(operation, context.receivedAt)
   }
-}
-
-type Guards = Awaited<ReturnType<typeof loadGuards>>
-
-/** For sheets that are handed in or accepted as fit in this batch: the findings that stand against it. */
-async function loadGuards(tx: Transaction, organisation: string, operations: readonly StampedOperation[], rows: Map<string, RowChange>) {
-  const sheetIds = [...new Set(operations
-    .filter(operation => operation.kind === 'st.req' && ['hand-in', 'accept'].includes(operation.body.transition) && operation.body.fit === true)
-    .map(operation => operation.object))]
-  return blockingFindings(tx, organisation, sheetIds, rows)
 }
 
 async function loadRows(tx: Transaction, organisation: string, operations: readonly StampedOperation[]): Promise<Map<string, RowChange>> {
