@@ -30,7 +30,7 @@ if (tooOld !== null) {
   process.exit(1)
 }
 
-const { startAppServer } = await import('../drizzle/scripts/app-server.mjs')
+const { PortTaken, startAppServer } = await import('../drizzle/scripts/app-server.mjs')
 const { installPackages } = await import('../drizzle/scripts/debian-packages.mjs')
 const { checkout, dataFolder, ensureDataFolder, Explained, readSecrets, withLock } = await import('../drizzle/scripts/local-folder.mjs')
 const { createDatabase, freePort, releaseCluster, restartCluster, startCluster } = await import('../drizzle/scripts/postgres.mjs')
@@ -295,7 +295,7 @@ async function startAppUnderTest() {
   if (seeded !== null) say(seeded)
 
   for (const name of ['HOST', 'TLS_CERT', 'TLS_KEY']) Reflect.deleteProperty(process.env, name)
-  const port = await freePort(E2E_FIRST_PORT)
+  let port = await freePort(E2E_FIRST_PORT)
   const log = join(dataFolder, 'logs', 'e2e-server.log')
   mkdirSync(dirname(log), { recursive: true })
   writeFileSync(log, '')
@@ -308,7 +308,12 @@ async function startAppUnderTest() {
     onLine: line => appendFileSync(log, `${line}\n`),
   })
   /** @type {import('../drizzle/scripts/app-server.mjs').RunningServer | null} */
-  let server = await start()
+  let server = await start().catch(async (/** @type {unknown} */ error) => {
+    // Another checkout's tests may have taken it at the same moment.
+    if (!(error instanceof PortTaken)) throw error
+    port = await freePort(port + 1 + Math.floor(Math.random() * 50))
+    return start()
+  })
   const baseUrl = server.url
   stops.push(async () => server?.stop())
   say(`The app under test is at ${baseUrl}; it writes to ${log}`)

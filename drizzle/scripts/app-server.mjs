@@ -12,6 +12,9 @@ import { SERVER_ENTRY } from './prepare.mjs'
 const START_LIMIT_MILLISECONDS = 60_000
 const GRACE_MILLISECONDS = 5_000
 
+/** Somebody else took the port between our look at it and the server's. */
+export class PortTaken extends Explained {}
+
 /**
  * @typedef {object} RunningServer
  * @property {number} pid
@@ -22,12 +25,13 @@ const GRACE_MILLISECONDS = 5_000
  */
 
 /**
- * @param {{ databaseUrl: string, sessionPassword: string, host: string, port: number, isDemo: boolean, environment?: NodeJS.ProcessEnv, onLine: (line: string) => void }} options
- *   `onLine` sees every line the server writes
+ * @param {{ databaseUrl: string, sessionPassword: string, host: string, port: number, isDemo: boolean, environment?: NodeJS.ProcessEnv, onLine: (line: string) => void, onSpawn?: (stop: () => Promise<void>) => void }} options
+ *   `onLine` sees every line the server writes; `onSpawn` gets the way to stop it before it is ready
  * @returns {Promise<RunningServer>} once GET /api/health says all is well
+ * @throws {PortTaken} when another program listens there
  * @throws {Explained} when it ends or stays silent
  */
-export async function startAppServer({ databaseUrl, sessionPassword, host, port, isDemo, environment = {}, onLine }) {
+export async function startAppServer({ databaseUrl, sessionPassword, host, port, isDemo, environment = {}, onLine, onSpawn }) {
   const certificate = readTls()
   const child = spawn(process.execPath, ['--import', join(checkout, 'drizzle', 'scripts', 'end-with-parent.mjs'), SERVER_ENTRY], {
     cwd: checkout,
@@ -46,6 +50,9 @@ export async function startAppServer({ databaseUrl, sessionPassword, host, port,
       ...(certificate === null ? {} : { NITRO_SSL_CERT: certificate.cert, NITRO_SSL_KEY: certificate.key }),
     },
   })
+  // Until the server says so itself, what answers on the port may be somebody else.
+  let isListening = false
+  let isPortTaken = false
   /** The last lines, for the sentence about a failure. @type {string[]} */
   const said = []
   for (const stream of [child.stdout, child.stderr]) {
@@ -54,11 +61,15 @@ export async function startAppServer({ databaseUrl, sessionPassword, host, port,
       const lines = (rest + text).split('\n')
       rest = lines.pop() ?? ''
       for (const line of lines) {
-        // Our own line with the address comes when the app answers, and it is the only one.
-        if (line.startsWith('Listening on ')) continue
+        if (line.startsWith('Listening on ')) {
+          // Our own line with the address comes when the app answers, and it is the only one.
+          isListening = true
+          continue
+        }
+        if (line.includes('EADDRINUSE')) isPortTaken = true
         said.push(line)
         if (said.length > 25) said.shift()
-        onLine(line)
+        if (!isPortTaken) onLine(line)
       }
     })
   }
@@ -80,6 +91,7 @@ export async function startAppServer({ databaseUrl, sessionPassword, host, port,
     stop: () => end('SIGTERM'),
     kill: () => end('SIGKILL'),
   }
+  onSpawn?.(server.stop)
   const checked = `${certificate === null ? 'http' : 'https'}://${urlHost(isEveryAddress(host) ? '127.0.0.1' : host)}:${port}/api/health`
   const deadline = Date.now() + START_LIMIT_MILLISECONDS
   let answer = 'no answer'
@@ -87,12 +99,16 @@ export async function startAppServer({ databaseUrl, sessionPassword, host, port,
   let early = null
   void ended.then((how) => { early = how })
   while (answer !== '200') {
+    if (isPortTaken) {
+      await server.kill()
+      throw new PortTaken(`Port ${port} on ${host} is taken. Stop what uses it, or set PORT to another number.`)
+    }
     if (early !== null) throw new Explained(`${early}${said.length === 0 ? '' : `\n${said.join('\n')}`}`)
     if (Date.now() > deadline) {
       await server.kill()
       throw new Explained(`The server did not become ready within ${START_LIMIT_MILLISECONDS / 1000} seconds; ${checked} gave: ${answer}`)
     }
-    answer = await askHealth(checked)
+    if (isListening) answer = await askHealth(checked)
     if (answer !== '200') await new Promise(resolve => setTimeout(resolve, 100))
   }
   return server

@@ -10,7 +10,7 @@
 //   TLS_CERT, TLS_KEY          files, to serve https
 import { spawn } from 'node:child_process'
 import { join } from 'node:path'
-import { appEnvironment, startAppServer } from './app-server.mjs'
+import { appEnvironment, PortTaken, startAppServer } from './app-server.mjs'
 import { checkout, Explained, processBirth, readSecrets } from './local-folder.mjs'
 import { freePort, isPortFree, releaseCluster, startCluster } from './postgres.mjs'
 import { ensureBuild, ensurePackages, migrate, readDemoSignIns, seedDemo } from './prepare.mjs'
@@ -81,7 +81,7 @@ function leaveIfStopped() {
 /** @param {boolean} isDevelopment */
 async function setUpAndRun(isDevelopment) {
   const host = process.env.HOST || '127.0.0.1'
-  const port = await choosePort(host)
+  let port = await choosePort(host, null)
 
   await ensurePackages(say)
   leaveIfStopped()
@@ -112,7 +112,8 @@ async function setUpAndRun(isDevelopment) {
   if (!builtNow) say('The build is up to date.')
   leaveIfStopped()
 
-  const server = await startAppServer({ ...settings, host, port, onLine: say })
+  port = await choosePort(host, port)
+  const server = await startOnFreePort(settings, host, port)
   stopApp = server.stop
   void server.ended.then(how => end(how))
   leaveIfStopped()
@@ -122,20 +123,40 @@ async function setUpAndRun(isDevelopment) {
 }
 
 /**
- * Looks at the port before the long steps, so that a taken one is known at once.
+ * Looks at the port before the long steps, so that a taken one is known at once, and again after them.
  * @param {string} host
+ * @param {number | null} earlier what the first look chose
  */
-async function choosePort(host) {
+async function choosePort(host, earlier) {
   const wanted = process.env.PORT
   if (wanted === undefined || wanted === '') {
     const port = await freePort(DEFAULT_PORT, host)
-    if (port !== DEFAULT_PORT) say(`Port ${DEFAULT_PORT} is taken, so this is port ${port}.`)
+    if (port !== DEFAULT_PORT && port !== earlier) say(`Port ${DEFAULT_PORT} is taken, so this is port ${port}.`)
     return port
   }
   const port = Number(wanted)
   if (!Number.isInteger(port) || port < 1 || port > 65_535) throw new Explained(`PORT=${wanted} is no port: give a number from 1 to 65535.`)
   if (!await isPortFree(port, host)) throw new Explained(`Port ${port} on ${host} is taken or not allowed. Stop what uses it, or set PORT to another number.`)
   return port
+}
+
+/**
+ * Two starts at once may both see the same free port; the later one moves on, unless the port was set.
+ * @param {{ databaseUrl: string, sessionPassword: string, isDemo: boolean }} settings
+ * @param {string} host
+ * @param {number} firstPort
+ */
+async function startOnFreePort(settings, host, firstPort) {
+  for (let port = firstPort; ;) {
+    try {
+      return await startAppServer({ ...settings, host, port, onLine: say, onSpawn: (stop) => { stopApp = stop } })
+    }
+    catch (error) {
+      if (!(error instanceof PortTaken) || process.env.PORT) throw error
+      port = await freePort(port + 1, host)
+      say(`Another program was quicker, so this is port ${port}.`)
+    }
+  }
 }
 
 /**
