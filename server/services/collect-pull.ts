@@ -30,7 +30,8 @@ export async function collectPull(tx: Transaction, actor: Actor, query: PullQuer
   const after = parseAfter(query.after)
 
   // A scope that the phone does not hold yet starts at 0, the others at its cursor (PULL4); one query a scope, so that the index gives the order.
-  const pages = await Promise.all(mine.map(scope => pageOfScope(tx, organisation, scope, gained.includes(scope) ? 0 : query.ver, to, after, query.limit)))
+  const pages: Row[][] = []
+  for (const scope of mine) pages.push(await pageOfScope(tx, organisation, scope, gained.includes(scope) ? 0 : query.ver, to, after, query.limit))
   const rows = pages.flat().sort(byFeed).slice(0, query.limit)
   const more = pages.some(page => page.length === query.limit) || pages.reduce((sum, page) => sum + page.length, 0) > query.limit
   const last = rows.at(-1)

@@ -55,7 +55,7 @@ export const pullQuerySchema = z.strictObject({
   to: z.coerce.number().int().min(0).optional(),
   after: z.string().max(200).optional(),
   limit: z.coerce.number().int().min(1).max(MAX_PAGE).default(MAX_PAGE),
-  /** Scopes the phone already holds, comma separated; what is missing comes back whole, in the same pages. */
+  /** Scopes the phone holds whole, comma separated, the same through all pages of one pull; what is missing is filled from the beginning in these pages. */
   have: z.string().max(20_000).optional(),
 })
 export type PullQuery = z.infer<typeof pullQuerySchema>
