@@ -43,13 +43,13 @@ async function ask(url: string, { signal, ...options }: AskOptions): Promise<Ans
   timeout.addEventListener('abort', abort)
   if (signal.aborted) abort()
   try {
-    const response = await $fetch.raw<string, 'text'>(url, {
+    const response = await $fetch.raw<unknown>(url, {
       ...options, signal: stop.signal, responseType: 'text', ignoreResponseError: true, retry: 0,
       headers: { accept: 'application/json' }, cache: 'no-store',
     })
     return {
       status: response.status,
-      body: isJson(response.headers.get('content-type')) ? parse(response._data ?? '') : undefined,
+      body: isJson(response.headers.get('content-type')) ? parse(String(response._data ?? '')) : undefined,
       retryAfterSeconds: secondsOf(response.headers.get('retry-after')),
     }
   }
