@@ -145,7 +145,8 @@ export async function migrate(ownerUrl) {
  */
 export async function seedDemo({ ownerUrl, appUrl }) {
   if (!existsSync(join(checkout, 'drizzle', 'scripts', 'seed.ts'))) return null
-  return runScript('seed.ts', { DATABASE_OWNER_URL: ownerUrl, DATABASE_URL: appUrl, NUXT_DATABASE_URL: appUrl, LAPEL_DEMO: '1' }, 'The demo data could not be loaded.')
+  // Two first starts at once must not both find the database empty.
+  return withLock('seed', () => runScript('seed.ts', { DATABASE_OWNER_URL: ownerUrl, DATABASE_URL: appUrl, NUXT_DATABASE_URL: appUrl, LAPEL_DEMO: '1' }, 'The demo data could not be loaded.'))
 }
 
 /**
