@@ -1,0 +1,20 @@
+import { instantText } from '#shared/domain/instant'
+import { localParts } from '#shared/domain/local-time'
+import type { Calibrator } from '#shared/records/calibrator'
+import type { SheetFacts } from '../sheet-facts'
+import { readFlows, type ReadFlow } from './read-flows'
+
+export interface CalibratorUse { set: ReadFlow, calibratorId: string, calibrator: Calibrator, dayOn: string }
+
+/** Each calibrator of each set of readings, with the day it was used on. */
+export function calibratorUses(facts: SheetFacts): CalibratorUse[] {
+  return readFlows(facts).flatMap((set) => {
+    const seen = new Map<string, CalibratorUse>()
+    for (const { data, at } of set.summary.readings) {
+      const calibrator = data.calibratorId === null ? undefined : facts.bundle.calibrators[data.calibratorId]
+      if (!calibrator || data.calibratorId === null || seen.has(data.calibratorId)) continue
+      seen.set(data.calibratorId, { set, calibratorId: data.calibratorId, calibrator, dayOn: localParts(instantText(Date.parse(at)), facts.zone).dayOn })
+    }
+    return [...seen.values()]
+  })
+}
