@@ -1,5 +1,5 @@
-import { liveQuery, type Subscription } from 'dexie'
 import type { ShallowRef, WatchSource } from 'vue'
+import { followQuery } from '~/local/live'
 
 /**
  * A query of the phone's database that answers again whenever what it read has changed, in this tab or in another one.
@@ -12,12 +12,11 @@ import type { ShallowRef, WatchSource } from 'vue'
 export function useLiveQuery<T>(query: () => T | Promise<T>, initial: T, source: WatchSource<unknown> = () => null, failed: (error: unknown) => void = error => console.error(error)): ShallowRef<T> {
   const value = shallowRef(initial) as ShallowRef<T>
   if (import.meta.server) return value
-  let subscription: Subscription | undefined
-  const end = () => subscription?.unsubscribe()
+  let end = () => {}
   watch(source, () => {
     end()
-    subscription = liveQuery(query).subscribe({ next: (answer) => { value.value = answer }, error: failed })
+    end = followQuery(query, (answer) => { value.value = answer }, failed)
   }, { immediate: true })
-  if (getCurrentScope()) onScopeDispose(end)
+  if (getCurrentScope()) onScopeDispose(() => end())
   return value
 }

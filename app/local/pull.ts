@@ -1,17 +1,13 @@
-import * as z from 'zod'
 import { HLC_PATTERN, HLC_ZERO, witness } from '#shared/sync/hlc'
-import { MAX_PAGE, pullResponseSchema } from '#shared/sync/protocol'
-import { rowSchema, type Row } from '#shared/sync/rows'
+import { phonePageSchema, type PhonePage } from '#shared/sync/phone-page'
+import { MAX_PAGE } from '#shared/sync/protocol'
+import type { Row } from '#shared/sync/rows'
 import { noteContact } from './contact'
 import { EMPTY_CURSOR, readMeta, writeMeta, type Cursor, type FieldDatabase } from './db'
 import type { FieldStore } from './field-store'
 import { readAnswer } from './read-answer'
 import { NoAnswer, type PullRequest } from './transport'
 import type { RoundOutcome, SyncContext } from './sync-round'
-
-/** A page as a phone takes it: a row of a kind that it does not know yet is kept for the version that does. */
-const pageSchema = pullResponseSchema.extend({ rows: z.array(rowSchema.extend({ t: z.string() })) })
-type Page = z.infer<typeof pageSchema>
 
 /** Pulls page after page until the phone has everything that the server had when the first page was asked for. */
 export async function pullRows(context: SyncContext): Promise<RoundOutcome> {
@@ -24,7 +20,7 @@ export async function pullRows(context: SyncContext): Promise<RoundOutcome> {
     try {
       const answer = await transport.pull({ ...queryOf(cursor), dev: await readMeta(db, 'dev') }, signal)
       const roundTripMilliseconds = surroundings.monotonic() - started
-      const meaning = readAnswer(answer, pageSchema)
+      const meaning = readAnswer(answer, phonePageSchema)
       if (meaning.kind === 'other-epoch') {
         await dropRows(store, meaning.epoch)
         continue
@@ -62,7 +58,7 @@ export function queryOf(cursor: Cursor): PullRequest {
  * @param asked the cursor that the page was asked with; when another tab has moved it meanwhile the page is not taken
  * @returns whether the page was taken
  */
-export async function keepPage(store: FieldStore, asked: Cursor, page: Page): Promise<boolean> {
+export async function keepPage(store: FieldStore, asked: Cursor, page: PhonePage): Promise<boolean> {
   const { db } = store
   return db.transaction('rw', db.rows, db.meta, async () => {
     const cursor = await readMeta(db, 'cursor') ?? EMPTY_CURSOR
@@ -103,7 +99,7 @@ async function raiseRevision(db: FieldDatabase, { anew, isChanged }: { anew: boo
 }
 
 /** The phone's clock takes note of the stamps it sees; those of the rows are effective ones, so one bad clock does not spread. */
-async function witnessStamps(db: FieldDatabase, rows: Page['rows']): Promise<void> {
+async function witnessStamps(db: FieldDatabase, rows: PhonePage['rows']): Promise<void> {
   const before = await readMeta(db, 'hlc') ?? HLC_ZERO
   let seen = before
   for (const row of rows) {

@@ -1,4 +1,3 @@
-import type * as z from 'zod'
 import { PROTOCOL_VERSION } from '#shared/sync/protocol'
 import type { Answer } from './transport'
 
@@ -13,8 +12,10 @@ export type Meaning<T>
     /** Something that is not our server answered: a portal of the building's network, or a proxy. As good as no network. */
     | { kind: 'not-ours' }
 
+interface AnswerSchema<T> { safeParse: (value: unknown) => { success: true, data: T } | { success: false } }
+
 /** Reads an answer. Nothing counts as a good answer but JSON of our protocol's version that has the expected shape. */
-export function readAnswer<T>(answer: Answer, schema: z.ZodType<T>): Meaning<T> {
+export function readAnswer<T>(answer: Answer, schema: AnswerSchema<T>): Meaning<T> {
   const { status, body } = answer
   if (status === 413) return { kind: 'too-large' }
   if (body === null || typeof body !== 'object') {

@@ -1,7 +1,7 @@
-import { liveQuery, type Subscription } from 'dexie'
 import type { SignedIn } from '#shared/records/office-views'
 import { currentPerson, peopleWithUnsentWork, phoneLabel } from '~/local/device'
 import { openFieldStore, type FieldStore } from '~/local/field-store'
+import { followQuery } from '~/local/live'
 import { createSheetsReader, type SheetsOnPhone } from '~/local/sheets'
 import { createViewReader, type FieldView } from '~/local/view'
 
@@ -23,21 +23,21 @@ export const useSessionStore = defineStore('session', () => {
   const failure = ref<string | null>(null)
   const signedIn = shallowRef<SignedIn | null>(null)
 
-  let following: Subscription | undefined
-  let reading: Subscription | undefined
+  let endFollowing: (() => void) | undefined
+  let endReading = () => {}
   const keyOf = (someone: SignedIn | null) => someone && `${someone.organisationId}:${someone.id}`
 
   /** Begins to follow who is at work on this phone; safe to call again. */
   function followPhone() {
-    if (following || !import.meta.client) return
+    if (endFollowing || !import.meta.client) return
     phoneName.value = phoneLabel(navigator.userAgent)
-    following = liveQuery(currentPerson).subscribe({ next: take, error: fail })
+    endFollowing = followQuery(currentPerson, take, fail)
   }
 
   function take(someone: SignedIn | null) {
     failure.value = null
     if (keyOf(someone) !== keyOf(person.value)) {
-      reading?.unsubscribe()
+      endReading()
       fieldStore.value?.db.close()
       view.value = sheets.value = null
       fieldStore.value = someone && markRaw(openFieldStore(someone))
@@ -50,13 +50,10 @@ export const useSessionStore = defineStore('session', () => {
 
   function readFrom(store: FieldStore) {
     const readSheets = createSheetsReader()
-    reading = liveQuery(createViewReader(store).read).subscribe({
-      next: (next) => {
-        if (next.revision !== view.value?.revision) sheets.value = readSheets(next)
-        view.value = next
-      },
-      error: fail,
-    })
+    endReading = followQuery(createViewReader(store).read, (next) => {
+      if (next.revision !== view.value?.revision) sheets.value = readSheets(next)
+      view.value = next
+    }, fail)
   }
 
   function fail(error: unknown) {
@@ -69,9 +66,9 @@ export const useSessionStore = defineStore('session', () => {
   }
 
   function stopFollowing() {
-    following?.unsubscribe()
-    reading?.unsubscribe()
-    following = reading = undefined
+    endFollowing?.()
+    endReading()
+    endFollowing = undefined
     fieldStore.value?.db.close()
     fieldStore.value = null
     view.value = sheets.value = null
