@@ -98,7 +98,7 @@ export function demoOrganisationDrafts(organisationId: string, now: Date): SeedD
     }),
     create('survey', ids.surveyReview, {
       title: 'Melting and finishing, metals and solvents', siteId: ids.site, purpose: 'Yearly survey of the furnace platform and the paint shop.',
-      startsOn: dayOf(daysFrom(now, -6)), endsOn: dayOf(daysFrom(now, -4)), zone: DEMO_ZONE,
+      startsOn: dayOf(daysFrom(now, -7)), endsOn: dayOf(daysFrom(now, -3)), zone: DEMO_ZONE,
     }),
     ...[ids.surveyToday, ids.surveyReview].flatMap(survey => technicians.map((person): SeedDraft =>
       ({ kind: 'set.add', object: survey, sheet: null, at, body: { set: 'crew', element: person, meta: {} } }))),

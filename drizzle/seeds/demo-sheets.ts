@@ -167,11 +167,12 @@ function lastWeek(scene: Scene, now: Date): void {
   decide(returnedTwice, 'return', office(4, '10:20'), 'Which lot of cassettes was this? The label in the photo shows another number.')
 
   // Accepted, and further.
-  const accepted: [string, string, number][] = [['TB-2543', 'D-101', 6], ['TB-2544', 'D-102', 6], ['TB-2554', 'D-107', 5], ['TB-2562', 'D-114', 4]]
+  const accepted: [string, string, number][] = [['TB-2531', 'D-101', 7], ['TB-2532', 'D-102', 7], ['TB-2554', 'D-107', 5], ['TB-2571', 'D-114', 3]]
   accepted.forEach(([number, worker, day], index) => {
     const sheet = silicaSheet(scene, index < 2 ? orla : tomas, survey, number, worker, 'Fettling of manhole frames', morning(day))
     const flow = (2.2 + index / 100).toFixed(2)
     const end = wholeShift(scene, sheet, morning(day, `06:${20 + index * 3}`), { pump: ['BR-0411', 'BR-0412', 'BR-0418', 'BR-0412'][index]!, before: [flow, flow, flow], after: [(Number(flow) - 0.03).toFixed(2), flow, flow] }, { minutes: 460 })
+    if (index === 0) sheet.set(morning(day, '15:30'), 'seal', 'S-4471')
     sheet.activity(morning(day, '07:30'), 'Disc cutting', morning(day, '09:00')).activity(morning(day, '09:10'), 'Chipping hammer', morning(day, '11:30'), { role: 'worker', id: ids.worker(worker), name: null })
     sheet.step(addMinutes(end, 35), 'hand-in', 0, true, null, index < 2 ? 'Orla Fenwick' : 'Tomas Reedmace')
     decide(sheet, 'accept', office(day - 2, '14:00'), null, true)
@@ -194,8 +195,8 @@ function lastWeek(scene: Scene, now: Date): void {
   hang(scene, swapped, morning(4, '06:05'), { pump: 'BR-0411', before: ['2.00', '2.00', '2.01'] }, CASSETTE)
   swapped.timer(morning(4, '06:05'), 'start', ids.pump('BR-0411'))
   swapped.fault(morning(4, '09:30'), ids.pump('BR-0411'), 'flow-blocked', 'Fault light on.')
+  swapped.readings(morning(4, '09:31'), 'before', ids.pump('BR-0412'), ids.calibrator('PD-19'), CASSETTE, ['1.98', '1.99', '1.98'])
   swapped.event(morning(4, '09:34'), 'pump-swap', { fromPumpId: ids.pump('BR-0411'), pumpId: ids.pump('BR-0412'), reason: 'fault' })
-  swapped.readings(morning(4, '09:36'), 'before', ids.pump('BR-0412'), ids.calibrator('PD-19'), CASSETTE, ['1.98', '1.99', '1.98'])
   swapped.timer(morning(4, '13:40'), 'stop', ids.pump('BR-0412'))
   swapped.readings(morning(4, '14:00'), 'after', ids.pump('BR-0412'), ids.calibrator('PD-19'), CASSETTE, ['1.95', '1.96', '1.95'])
   swapped.activity(morning(4, '06:30'), 'Tapping', morning(4, '09:00'))
@@ -206,7 +207,15 @@ function lastWeek(scene: Scene, now: Date): void {
   twin.activity(morning(4, '07:00'), 'Relining; said "it was <LOD last time" 👷', morning(4, '10:00'), { role: 'worker', id: ids.worker('D-120'), name: null })
   twin.step(addMinutes(stop, 20), 'hand-in', 0, false, 'Number was on two labels; checked with the crew.', 'Ines Calderwood')
 
-  // A field blank of the set.
+  // Field blanks: both of the silica set, one of the two that the metals need.
+  for (const number of ['TB-2539', 'TB-2549']) {
+    const silicaBlank = orla.sheet(number, survey, morning(7, '08:00'), {
+      number, kind: 'field-blank', air: 'none', methodId: ids.method('NMAM 7500'), samplerId: ids.sampler(HD_CYCLONE), medium: '5-um PVC, 37 mm', mediumLot: 'PV-2231', mediumExpiresOn: '2028-06-30',
+      agentIds: [ids.agent('Silica, crystalline, respirable (quartz, cristobalite, tridymite)')],
+    })
+    silicaBlank.step(morning(7, '15:40'), 'hand-in', 0, true, null, 'Orla Fenwick')
+    decide(silicaBlank, 'accept', office(5, '14:10'), null, true)
+  }
   const blank = ines.sheet('TB-2569', survey, morning(4, '08:00'), {
     number: 'TB-2569', kind: 'field-blank', air: 'none', agentIds: metals.agentIds, methodId: metals.methodId, samplerId: metals.samplerId, medium: metals.medium, mediumLot: metals.mediumLot,
   })
