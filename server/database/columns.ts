@@ -1,9 +1,12 @@
 import { customType, uuid } from 'drizzle-orm/pg-core'
 
+/** PostgreSQL has no year 0, which ISO 8601 has: a phone whose clock is that far off gets the first instant there is. */
+const FIRST_INSTANT = Date.parse('0001-01-01T00:00:00.000Z')
+
 /** `timestamptz` in the database, ISO 8601 UTC text with milliseconds in the program: reads back byte for byte as a record has it. */
 export const instant = customType<{ data: string, driverData: string | Date }>({
   dataType: () => 'timestamp with time zone',
-  toDriver: value => value,
+  toDriver: value => new Date(Math.max(Date.parse(value), FIRST_INSTANT)).toISOString(),
   fromDriver: value => (value instanceof Date ? value : new Date(value)).toISOString(),
 })
 

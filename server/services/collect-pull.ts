@@ -22,11 +22,11 @@ export async function collectPull(tx: Transaction, actor: Actor, query: PullQuer
   if (!clock) throw new Error(`collectPull: no counter for organisation ${organisation}`)
   if (query.epoch !== undefined && query.epoch !== '' && query.epoch !== clock.epoch) throw new OtherEpoch(clock.epoch)
 
-  const mine = await scopesOf(tx, actor)
+  const to = Math.min(query.to ?? clock.v, clock.v)
+  const mine = await scopesOf(tx, actor, to)
   const have = query.have === undefined || query.have === '' ? [] : query.have.split(',')
   const gained = mine.filter(scope => !have.includes(scope))
   const lost = have.filter(scope => !mine.includes(scope))
-  const to = Math.min(query.to ?? clock.v, clock.v)
   const after = parseAfter(query.after)
 
   // A scope that the phone does not hold yet starts at 0, the others at its cursor (PULL4); one query a scope, so that the index gives the order.

@@ -10,13 +10,15 @@ const queue: (() => void)[] = []
 
 async function inTurn<T>(work: () => Promise<T>): Promise<T> {
   if (running >= AT_ONCE) await new Promise<void>(resolve => queue.push(resolve))
-  running++
+  else running++
   try {
     return await work()
   }
   finally {
-    running--
-    queue.shift()?.()
+    // Whoever waits takes this turn over; only when nobody does is it free for the next who comes.
+    const next = queue.shift()
+    if (next) next()
+    else running--
   }
 }
 

@@ -43,22 +43,27 @@ export async function writeLedger(tx: Transaction, organisation: string, ver: nu
       "hlcClaimed" text, "hlcEffective" text, body jsonb, "bodyHash" text, personal jsonb, "claimedId" uuid, "receivedAt" timestamptz, outcome text, reason text, detail text)`)
 }
 
-/** Hashes under which the ledger already holds these ids, also where another operation had the id first (PUSH3). */
-export async function knownHashes(tx: Transaction, organisation: string, ids: readonly string[]): Promise<Map<string, Set<string>>> {
-  const hashes = new Map<string, Set<string>>()
-  if (ids.length === 0) return hashes
-  const found = await tx.execute<{ id: string, hash: string }>(sql`
-    select id, encode(body_hash, 'hex') as hash from op where organisation = ${organisation} and id = any(${sql.param(ids)}::uuid[])
+/** What the ledger says of an operation that it already holds. */
+export interface EarlierAnswer { outcome: string, reason: string | null }
+
+/** The answers that were given under these ids, by id and hash, also where another operation had the id first (PUSH3). */
+export async function earlierAnswers(tx: Transaction, organisation: string, ids: readonly string[]): Promise<Map<string, Map<string, EarlierAnswer>>> {
+  const answers = new Map<string, Map<string, EarlierAnswer>>()
+  if (ids.length === 0) return answers
+  const found = await tx.execute<{ id: string, hash: string, outcome: string, reason: string | null }>(sql`
+    select id, encode(body_hash, 'hex') as hash, outcome, reason from op where organisation = ${organisation} and id = any(${sql.param(ids)}::uuid[])
     union all
-    select claimed_id, encode(body_hash, 'hex') from op where organisation = ${organisation} and claimed_id = any(${sql.param(ids)}::uuid[])`)
-  for (const { id, hash } of found.rows) hashes.set(id, (hashes.get(id) ?? new Set()).add(hash))
-  return hashes
+    select claimed_id, encode(body_hash, 'hex'), outcome, reason from op where organisation = ${organisation} and claimed_id = any(${sql.param(ids)}::uuid[])`)
+  for (const { id, hash, outcome, reason } of found.rows) answers.set(id, (answers.get(id) ?? new Map()).set(hash, { outcome, reason }))
+  return answers
 }
 
-/** Numbers of one phone that the ledger already holds, with the operation's id. */
-export async function knownNumbers(tx: Transaction, organisation: string, dev: string, numbers: readonly number[]): Promise<Map<number, string>> {
-  if (numbers.length === 0) return new Map()
-  const found = await tx.execute<{ n: number, id: string }>(sql`
-    select n::int as n, id from op where organisation = ${organisation} and dev = ${dev} and n = any(${sql.param(numbers)}::bigint[])`)
-  return new Map(found.rows.map(row => [row.n, row.id]))
+/** Numbers of one phone that the ledger already holds, with the ids under which they came. */
+export async function knownNumbers(tx: Transaction, organisation: string, dev: string, numbers: readonly number[]): Promise<Map<number, Set<string>>> {
+  const known = new Map<number, Set<string>>()
+  if (numbers.length === 0) return known
+  const found = await tx.execute<{ n: string, id: string }>(sql`
+    select n, coalesce(claimed_id, id) as id from op where organisation = ${organisation} and dev = ${dev} and n = any(${sql.param(numbers)}::bigint[])`)
+  for (const { n, id } of found.rows) known.set(Number(n), (known.get(Number(n)) ?? new Set()).add(id))
+  return known
 }

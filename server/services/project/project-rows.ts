@@ -1,4 +1,4 @@
-import { and, eq, getTableColumns, inArray, sql, type SQL } from 'drizzle-orm'
+import { and, eq, getTableColumns, inArray, notInArray, sql, type SQL } from 'drizzle-orm'
 import type { PgTable } from 'drizzle-orm/pg-core'
 import type { RecordKind } from '#shared/records/kinds'
 import { groupRows, kindOf, recordOf, sheetDocumentOf, type ObjectRows } from '#shared/sync/read-rows'
@@ -33,7 +33,8 @@ export const PROJECTIONS: Readonly<Record<RecordKind, 'table' | 'rows'>> = {
 export async function projectRows(tx: Transaction, organisation: string, changed: readonly RowChange[], ver: number): Promise<void> {
   const objects = [...new Set(changed.filter(touchesProjection).map(row => row.object))]
   if (objects.length === 0) return
-  const rows = await tx.select().from(rowState).where(and(eq(rowState.organisation, organisation), inArray(rowState.object, objects)))
+  const rows = await tx.select().from(rowState)
+    .where(and(eq(rowState.organisation, organisation), inArray(rowState.object, objects), notInArray(rowState.t, ['ev', 'set'])))
   const sheetRows: (typeof sheets.$inferInsert)[] = []
   const surveyRows: (typeof surveys.$inferInsert)[] = []
   for (const group of groupRows(rows).values()) {
