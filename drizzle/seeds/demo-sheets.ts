@@ -137,8 +137,8 @@ function lastWeek(scene: Scene, now: Date): void {
   const overdue = silicaSheet(scene, tomas, survey, 'TB-2551', 'D-119', 'Charging and tapping', morning(5), metals)
   stop = wholeShift(scene, overdue, morning(5, '06:05'), { pump: 'BR-0418', calibrator: 'PB-04', before: ['2.00', '2.01', '2.00'], after: ['1.87', '1.88', '1.87'] }, { sampler: CASSETTE, minutes: 460 })
   overdue.activity(morning(5, '06:40'), 'Charging scrap', morning(5, '08:00'))
-  overdue.answer(addMinutes(stop, 30), 'flow-change', '', 'Filter visibly loaded; the lower flow is used.')
-  overdue.answer(addMinutes(stop, 31), 'calibrator-overdue', '', 'The dry-piston calibrator was with the other crew.')
+  overdue.answer(addMinutes(stop, 30), 'flow-change', ids.pump('BR-0418'), 'Filter visibly loaded; the lower flow is used.')
+  for (const when of ['before', 'after']) overdue.answer(addMinutes(stop, 31), 'calibrator-overdue', `${ids.calibrator('PB-04')}/${ids.pump('BR-0418')}/${when}`, 'The dry-piston calibrator was with the other crew.')
   overdue.step(addMinutes(stop, 50), 'hand-in', 0, true, null, 'Tomas Reedmace')
 
   // Only two readings, one of them without the sampler, a pause with no reason.
@@ -171,7 +171,7 @@ function lastWeek(scene: Scene, now: Date): void {
   accepted.forEach(([number, worker, day], index) => {
     const sheet = silicaSheet(scene, index < 2 ? orla : tomas, survey, number, worker, 'Fettling of manhole frames', morning(day))
     const flow = (2.2 + index / 100).toFixed(2)
-    const end = wholeShift(scene, sheet, morning(day, `06:${20 + index * 3}`), { pump: ['BR-0411', 'BR-0412', 'BR-0418', 'BR-0412'][index]!, before: [flow, flow, flow], after: [(Number(flow) - 0.03).toFixed(2), flow, flow] }, { minutes: 460 })
+    const end = wholeShift(scene, sheet, morning(day, `06:${20 + index * 3}`), { pump: ['BR-0411', 'BR-0412', 'BR-0412', 'BR-0418'][index]!, before: [flow, flow, flow], after: [(Number(flow) - 0.03).toFixed(2), flow, flow] }, { minutes: 460 })
     if (index === 0) sheet.set(morning(day, '15:30'), 'seal', 'S-4471')
     sheet.activity(morning(day, '07:30'), 'Disc cutting', morning(day, '09:00')).activity(morning(day, '09:10'), 'Chipping hammer', morning(day, '11:30'), { role: 'worker', id: ids.worker(worker), name: null })
     sheet.step(addMinutes(end, 35), 'hand-in', 0, true, null, index < 2 ? 'Orla Fenwick' : 'Tomas Reedmace')
