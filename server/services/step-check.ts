@@ -1,4 +1,3 @@
-import { and, eq, inArray, notInArray, or, sql } from 'drizzle-orm'
 import { assessSheet } from '#shared/assessment/assess-sheet'
 import { siblingsOf } from '#shared/assessment/siblings'
 import { createBundleSource } from '#shared/sync/bundle'
@@ -7,10 +6,7 @@ import type { RefusedReason } from '#shared/sync/outcomes'
 import { groupRows } from '#shared/sync/read-rows'
 import type { RowChange } from '#shared/sync/rows'
 import type { Transaction } from '#server/database/client'
-import { rowState } from '#server/database/tables/row-state'
-
-/** Kinds of record that no finding looks at. */
-const NOT_LOOKED_AT = ['limit', 'person', 'exposure-group', 'site', 'plan-line']
+import { assessmentRows } from '#server/database/queries/assessment-rows'
 
 export type StepCheck = (operation: OperationOf<'st.req'>, receivedAt: string) => RefusedReason | null
 
@@ -24,13 +20,7 @@ export async function loadStepCheck(tx: Transaction, organisation: string, opera
   const steps = operations.filter(operation => operation.kind === 'st.req' && ['hand-in', 'accept'].includes(operation.body.transition))
   if (steps.length === 0) return () => null
   const surveys = [...new Set(steps.flatMap(step => surveyOf(step.object, operations, rows) ?? []))]
-  const stored = await tx.select().from(rowState).where(and(eq(rowState.organisation, organisation), or(
-    inArray(rowState.scope, surveys.length > 0 ? surveys : ['00000000-0000-0000-0000-000000000000']),
-    and(eq(rowState.scope, organisation), or(
-      eq(rowState.t, 'reg'),
-      and(eq(rowState.t, 'obj'), notInArray(sql`${rowState.data} ->> 'type'`, NOT_LOOKED_AT)),
-    )),
-  )))
+  const stored = await assessmentRows(tx, organisation, surveys)
 
   return (operation, receivedAt) => {
     const { transition, fit, reason } = operation.body

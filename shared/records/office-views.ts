@@ -1,6 +1,8 @@
 import * as z from 'zod'
 import { idSchema } from './base'
 import { roleSchema } from './person'
+import type { PlanLine } from './plan-line'
+import type { Identified } from './sheet-bundle'
 import { sheetStateSchema, transitionSchema } from './sheet-state'
 
 /** POST /api/session */
@@ -132,3 +134,6 @@ export interface SurveyView {
   sheetCounts: Record<string, number>
   planLineCount: number
 }
+
+/** GET /api/surveys/:surveyId: the survey and the samples that are planned in it. */
+export interface SurveyDetail extends SurveyView { planLines: Identified<PlanLine>[] }
