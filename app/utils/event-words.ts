@@ -1,12 +1,15 @@
-import type { SheetEvent } from '#shared/records/sheet-event'
+import type { SheetEvent, SheetEventData, SheetEventType } from '#shared/records/sheet-event'
 import { formatFlow, formatTime, inWords } from './format'
 import type { NameOf } from './record-names'
 import { EVENT_WORDS, PUMP_FAULT_WORDS, TIMER_WORDS } from './record-words'
 
 export interface EventWords { title: string, detail: string }
 
+/** The part of an event that is put into words; a change in the history carries no more. */
+export type SaidEvent = { [T in SheetEventType]: { type: T, data: SheetEventData[T] } }[SheetEventType]
+
 /** An event of a sheet as its timeline shows it: what happened in a word or two, then what was noted. */
-export function eventInWords(event: SheetEvent, nameOf: NameOf, zone: string): EventWords {
+export function eventInWords(event: SaidEvent, nameOf: NameOf, zone: string): EventWords {
   const title = EVENT_WORDS[event.type]
   switch (event.type) {
     case 'timer': {

@@ -12,6 +12,8 @@ import type { FlowUnit } from '#shared/domain/units'
 /** A number as it is shown, and its unit apart, because the unit may stand in a table's head. */
 export interface Measure { value: string, unit: string }
 
+/** Nobody draws a line below this; a change of 0.98 % is plainly shown as 1.0 %. */
+const SMALLEST_THRESHOLD_PERCENT = 2
 const MINUS = '\u2212'
 const MONTHS = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec']
 const WEEKDAYS = ['Sun', 'Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat']
@@ -38,10 +40,15 @@ export function formatMinutes(minutes: number, decimals = 0): Measure {
  */
 export function formatPercent(percent: number, options: { sign?: boolean } = {}): Measure {
   const oneDecimal = fixed(percent, 1)
-  const hidesCrossing = oneDecimal.endsWith('.0') && Math.abs(Number(oneDecimal) - percent) > 1e-9
+  const hidesCrossing = Math.abs(percent) >= SMALLEST_THRESHOLD_PERCENT && oneDecimal.endsWith('.0') && Math.abs(Number(oneDecimal) - percent) > 1e-9
   const text = hidesCrossing ? fixed(percent, 2) : oneDecimal
   const plus = options.sign && Number(text) > 0 ? '+' : ''
   return { value: plus + signed(text), unit: '%' }
+}
+
+/** A unit as it is printed: `mg/m³`. */
+export function formatUnit(unit: string): string {
+  return unit.replace(/m3\b/g, 'm³')
 }
 
 /** A share from 0 to 1 as whole percent. */

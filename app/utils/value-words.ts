@@ -1,7 +1,7 @@
 import { isInstant } from '#shared/domain/instant'
 import { isDay } from '#shared/domain/day'
 import type { SheetField } from '#shared/records/sheet'
-import { formatDay, formatFlow, formatInstant, inWords } from './format'
+import { formatDay, formatInstant } from './format'
 import type { NameOf } from './record-names'
 import { AIR_WORDS, CHECK_WORDS, INLET_SIDE_WORDS, SHEET_KIND_WORDS, USUAL_DAY_WORDS } from './record-words'
 
@@ -33,7 +33,7 @@ export function valueInWords(field: string, value: unknown, nameOf: NameOf, zone
 }
 
 function numberInWords(field: string, value: number): string {
-  if (field === 'plannedFlowLitresPerMinute') return inWords(formatFlow(value))
+  if (field === 'plannedFlowLitresPerMinute') return `${value} L/min`
   if (field === 'uptakeMillilitresPerMinute') return `${value} mL/min`
   return String(value)
 }
