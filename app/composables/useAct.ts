@@ -1,0 +1,35 @@
+/**
+ * One thing that a person does and that is written down: whether it is under way, and why it was not saved. A second press while
+ * the first one is under way does nothing.
+ */
+export function useAct() {
+  const busy = ref(false)
+  const problem = ref('')
+
+  /** @returns what the action gave, or undefined where it failed or another one is under way */
+  async function run<T>(action: () => Promise<T>): Promise<T | undefined> {
+    if (busy.value) return undefined
+    busy.value = true
+    problem.value = ''
+    try {
+      return await action()
+    }
+    catch (error) {
+      console.error(error)
+      problem.value = wordsFor(error)
+      return undefined
+    }
+    finally {
+      busy.value = false
+    }
+  }
+
+  return { busy, problem, run }
+}
+
+function wordsFor(error: unknown): string {
+  if (error instanceof Error && /quota/i.test(`${error.name} ${error.message}`)) {
+    return 'Not saved: this phone has no space left. Free some space and try again. What is typed is still here.'
+  }
+  return 'Not saved. What is typed is still here; try again.'
+}
