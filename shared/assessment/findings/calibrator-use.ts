@@ -1,6 +1,5 @@
-import { instantText } from '#shared/domain/instant'
-import { localParts } from '#shared/domain/local-time'
 import type { Calibrator } from '#shared/records/calibrator'
+import { dayAt } from '../place-time'
 import type { SheetFacts } from '../sheet-facts'
 import { readFlows, type ReadFlow } from './read-flows'
 
@@ -13,7 +12,7 @@ export function calibratorUses(facts: SheetFacts): CalibratorUse[] {
     for (const { data, at } of set.summary.readings) {
       const calibrator = data.calibratorId === null ? undefined : facts.bundle.calibrators[data.calibratorId]
       if (!calibrator || data.calibratorId === null || seen.has(data.calibratorId)) continue
-      seen.set(data.calibratorId, { set, calibratorId: data.calibratorId, calibrator, dayOn: localParts(instantText(Date.parse(at)), facts.zone).dayOn })
+      seen.set(data.calibratorId, { set, calibratorId: data.calibratorId, calibrator, dayOn: dayAt(Date.parse(at), facts.zone) })
     }
     return [...seen.values()]
   })

@@ -1,7 +1,6 @@
-import { instantText } from '#shared/domain/instant'
-import { localParts } from '#shared/domain/local-time'
 import { fixed } from '#shared/domain/rounding'
 import type { SheetState } from '#shared/records/sheet-state'
+import { dayAt } from '../place-time'
 import type { FindingRule } from './finding-rule'
 
 const MILLISECONDS_IN_DAY = 86_400_000
@@ -15,7 +14,7 @@ export const holdTime: FindingRule = {
     const untilAt = timeline.stoppedAt + method.holdDays * MILLISECONDS_IN_DAY
     const daysLeft = (untilAt - now) / MILLISECONDS_IN_DAY
     if (daysLeft > Math.min(3, method.holdDays / 4)) return null
-    const until = localParts(instantText(untilAt), zone).dayOn
+    const until = dayAt(untilAt, zone)
     return {
       severity: daysLeft < 0 ? 'attention' : 'note', part: 'close',
       title: daysLeft < 0 ? `The sample kept until ${until}: ${fixed(-daysLeft, 1)} days ago.` : `The sample keeps until ${until}, ${fixed(daysLeft, 1)} days more.`,

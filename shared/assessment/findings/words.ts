@@ -1,6 +1,5 @@
-import { instantText } from '#shared/domain/instant'
-import { localParts } from '#shared/domain/local-time'
 import { fixed, significant } from '#shared/domain/rounding'
+import { timeAt } from '../place-time'
 
 /** Where rules come from, said the same way in every finding. */
 export const COMMON_PRACTICE = 'common practice'
@@ -14,9 +13,7 @@ export const percentText = (percent: number) => `${fixed(Math.abs(percent), 1)} 
 export const minutesText = (minutes: number) => `${fixed(minutes, 0)} min`
 
 /** Clock time on the wall of the place. */
-export function timeText(at: number, zone: string): string {
-  return localParts(instantText(at), zone).time
-}
+export const timeText = timeAt
 
 /** "above" or "below", by sign. */
 export const sideText = (value: number) => value < 0 ? 'below' : 'above'
