@@ -29,7 +29,7 @@ const KEPT: Readonly<Record<string, string>> = {
 }
 
 const REQUEST: Readonly<Record<string, ErrorText>> = {
-  'wrong-credentials': { title: 'That did not match', message: 'The e-mail address or the password is not right. Nothing on this phone has changed. Try again.' },
+  'wrong-sign-in': { title: 'That did not match', message: 'The e-mail address or the password is not right. Nothing on this phone has changed. Try again.' },
   'too-many-attempts': { title: 'Too many attempts', message: 'Signing in is paused for a few minutes. Nothing on this phone has changed. Wait and try again.' },
   'no-answer': { title: 'No connection', message: 'The server cannot be reached. What is saved on this phone is safe. Try again when there is a connection.' },
   'server-error': { title: 'The server could not do this', message: 'Something failed at the server. What is saved on this phone is safe. Try again in a minute.' },
@@ -67,6 +67,6 @@ export function requestCode(error: unknown): string {
   if (typeof code === 'string') return code
   const answered = status ?? statusCode
   if (answered === undefined) return 'no-answer'
-  if (answered === 401) return 'wrong-credentials'
+  if (answered === 401) return 'wrong-sign-in'
   return answered === 429 ? 'too-many-attempts' : 'server-error'
 }
