@@ -1,13 +1,14 @@
-import { and, eq, inArray, sql } from 'drizzle-orm'
+import { and, eq, sql } from 'drizzle-orm'
 import { can, type Actor } from '#shared/access/policy'
 import { RECORD_SCOPES, type RecordKind } from '#shared/records/kinds'
 import { held, merge, rowKeysOf, type StepGuard } from '#shared/sync/merge'
-import type { OperationOf, StampedOperation } from '#shared/sync/operations'
+import type { StampedOperation } from '#shared/sync/operations'
 import type { Outcome } from '#shared/sync/outcomes'
 import type { ObjectData, Row, RowChange, RowType, SetData } from '#shared/sync/rows'
 import type { Transaction } from '#server/database/client'
 import { rowState } from '#server/database/tables/row-state'
 import { grantScope } from '#server/database/tables/grant-scope'
+import { heldScope, isSurvey } from './held-scope'
 import { projectRows } from './project/project-rows'
 import { loadStepCheck, type StepCheck } from './step-check'
 
@@ -54,7 +55,7 @@ export async function applyOperations(tx: Transaction, context: ApplyContext, op
   const writes = [...changed.values()]
   await storeRows(tx, organisation, writes, context.ver)
   await storeGrants(tx, organisation, writes, context.ver)
-  await projectRows(tx, organisation, writes, context.ver)
+  await projectRows(tx, organisation, writes)
   return answers
 }
 
@@ -62,35 +63,28 @@ function applyOne(operation: StampedOperation, read: (t: RowType, id: string) =>
   const organisation = context.actor.organisationId
   try {
     const refusal = refuseByRights(operation, read, context, crews)
-    if (refusal) return held(operation, refusal.reason, null, refusal.scope)
+    if (refusal) return held(operation, refusal, null, heldScope(operation, read, organisation))
     return merge(operation, read, organisation, stepGuard(context, read, crews, check))
   }
   catch (error) {
     // Only a fault of ours gets here: the operation is kept and shown, the others go on.
     console.error(`Operation ${operation.id} could not be merged: ${error instanceof Error ? error.message : String(error)}`)
-    return held(operation, 'error', null, read('obj', operation.object)?.scope ?? organisation)
+    return held(operation, 'error', null, heldScope(operation, read, organisation))
   }
 }
 
 /** Rights at receipt: what the person may write now, whatever was allowed when it was written. */
-function refuseByRights(operation: StampedOperation, read: (t: RowType, id: string) => RowChange | undefined, context: ApplyContext, crews: Set<string>): { reason: 'no-access' | 'not-allowed', scope: string } | null {
-  const organisation = context.actor.organisationId
+function refuseByRights(operation: StampedOperation, read: (t: RowType, id: string) => RowChange | undefined, context: ApplyContext, crews: Set<string>): 'no-access' | 'not-allowed' | null {
   const target = read('obj', operation.object)
-  const creation = operation.kind === 'obj.new' && !target ? operation as OperationOf<'obj.new'> : null
-  if (!target && !creation) return null
-  const kind = (creation ? creation.body.type : (target!.data as unknown as ObjectData).type) as RecordKind
-  const scope = target?.scope ?? (RECORD_SCOPES[kind] === 'survey' ? creation!.body.parent ?? operation.object : organisation)
-  if (operation.kind === 'st.req') return null
-  if (creation && RECORD_SCOPES[kind] === 'survey' && kind !== 'survey' && !isSurvey(read('obj', scope))) return { reason: 'no-access', scope: organisation }
-  const isInCrew = scope === organisation ? undefined : crews.has(scope)
-  const action = { do: creation ? 'create' : 'change', kind } as const
-  if (can(context.actor, action, { isInCrew })) return null
-  // The held change is shown where it belongs, never in a survey that its author cannot see.
-  return { reason: isInCrew === false ? 'no-access' : 'not-allowed', scope }
-}
-
-function isSurvey(row: RowChange | undefined): boolean {
-  return (row?.data as unknown as ObjectData | undefined)?.type === 'survey'
+  // A step has its own guard; what names nothing known is for the merge to say.
+  if (operation.kind === 'st.req' || (!target && operation.kind !== 'obj.new')) return null
+  const isNew = operation.kind === 'obj.new' && !target
+  const kind = isNew ? operation.body.type : (target!.data as unknown as ObjectData).type as RecordKind
+  if (isNew && RECORD_SCOPES[kind] === 'survey' && kind !== 'survey' && !isSurvey(read('obj', operation.body.parent ?? ''))) return 'no-access'
+  const scope = heldScope(operation, read, context.actor.organisationId)
+  const action = { do: isNew ? 'create' : 'change', kind } as const
+  if (can(context.actor, action, { isInCrew: scope === context.actor.organisationId ? undefined : crews.has(scope) })) return null
+  return can(context.actor, action, { isInCrew: true }) ? 'no-access' : 'not-allowed'
 }
 
 function stepGuard(context: ApplyContext, read: (t: RowType, id: string) => RowChange | undefined, crews: Set<string>, check: StepCheck): StepGuard {
@@ -126,29 +120,29 @@ async function loadGrants(tx: Transaction, actor: Actor): Promise<Set<string>> {
   return new Set(grants.map(grant => grant.scope))
 }
 
+/** The crew of a survey is who may see it. */
+async function storeGrants(tx: Transaction, organisation: string, rows: readonly RowChange[], ver: number): Promise<void> {
+  for (const grant of grantsOf(rows)) {
+    const set = { ver, gone: grant.gone }
+    await tx.insert(grantScope).values({ organisation, person: grant.person, scope: grant.scope, ...set })
+      .onConflictDoUpdate({ target: [grantScope.organisation, grantScope.person, grantScope.scope], set })
+  }
+}
+
+/** Who may see which survey, as the rows of its crew say. */
+export function grantsOf<R extends RowChange>(rows: readonly R[]): { person: string, scope: string, gone: boolean, row: R }[] {
+  return rows.flatMap((row) => {
+    const data = row.data as unknown as SetData
+    return row.t === 'set' && data.set === 'crew' ? [{ person: data.element, scope: row.object, gone: !data.isPresent, row }] : []
+  })
+}
+
 /** One statement for all rows, whatever their number. */
-async function storeRows(tx: Transaction, organisation: string, rows: readonly RowChange[], ver: number): Promise<void> {
+export async function storeRows(tx: Transaction, organisation: string, rows: readonly RowChange[], ver: number): Promise<void> {
   if (rows.length === 0) return
   await tx.execute(sql`
     insert into ${rowState} (organisation, t, id, scope, object, ver, gone, data)
     select ${organisation}::uuid, x.t, x.id, x.scope, x.object, ${ver}::bigint, x.gone, x.data
     from jsonb_to_recordset(${JSON.stringify(rows)}::jsonb) as x(t text, id text, scope uuid, object uuid, gone boolean, data jsonb)
     on conflict (organisation, t, id) do update set scope = excluded.scope, object = excluded.object, ver = excluded.ver, gone = excluded.gone, data = excluded.data`)
-}
-
-/** The crew of a survey is who may see it. */
-async function storeGrants(tx: Transaction, organisation: string, rows: readonly RowChange[], ver: number): Promise<void> {
-  for (const row of rows) {
-    const data = row.data as unknown as SetData
-    if (row.t !== 'set' || data.set !== 'crew') continue
-    await tx.insert(grantScope).values({ organisation, person: data.element, scope: row.object, ver, gone: !data.isPresent })
-      .onConflictDoUpdate({ target: [grantScope.organisation, grantScope.person, grantScope.scope], set: { ver, gone: !data.isPresent } })
-  }
-}
-
-/** Rows of whole records, for assessments and projections. */
-export async function rowsOfObjects(tx: Transaction, organisation: string, objects: readonly string[]): Promise<Row[]> {
-  if (objects.length === 0) return []
-  const found = await tx.select().from(rowState).where(and(eq(rowState.organisation, organisation), inArray(rowState.object, [...objects])))
-  return found
 }

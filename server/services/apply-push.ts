@@ -1,10 +1,10 @@
 import { randomUUID } from 'node:crypto'
 import { and, eq, inArray } from 'drizzle-orm'
 import type { Actor } from '#shared/access/policy'
+import { idSchema } from '#shared/records/base'
 import { effectiveStamp, HLC_ZERO } from '#shared/sync/hlc'
 import type { StampedOperation } from '#shared/sync/operations'
 import { PROTOCOL_VERSION, type PushRequest, type PushResponse } from '#shared/sync/protocol'
-import type { LateData, RowChange } from '#shared/sync/rows'
 import type { Transaction } from '#server/database/client'
 import { device } from '#server/database/tables/device'
 import { applyOperations } from './apply-operations'
@@ -37,7 +37,7 @@ export function applyPush(tx: Transaction, actor: Actor, request: PushRequest, n
  */
 export async function applyReceived(tx: Transaction, actor: Actor, envelope: PushEnvelope, batch: readonly Received[], now: Date): Promise<PushResponse> {
   const organisation = actor.organisationId
-  const inOrder = [...batch].sort((a, b) => a.loose.n - b.loose.n)
+  const inOrder = [...batch].sort((a, b) => a.loose.n - b.loose.n || (a.loose.id < b.loose.id ? -1 : 1))
 
   // From here on nobody else in this organisation writes; all that could be computed before was.
   const stamp = await lockCounter(tx, organisation)
@@ -51,7 +51,7 @@ export async function applyReceived(tx: Transaction, actor: Actor, envelope: Pus
   const entries: LedgerEntry[] = []
   const answers: PushResponse['res'] = []
   const toApply: { index: number, entry: LedgerEntry, stamped: StampedOperation }[] = []
-  const unread: RowChange[] = []
+  const unread: LedgerEntry[] = []
 
   for (const received of inOrder) {
     const { loose, hash, operation } = received
@@ -71,7 +71,7 @@ export async function applyReceived(tx: Transaction, actor: Actor, envelope: Pus
     const entry: LedgerEntry = {
       id: underThisId ? randomUUID() : loose.id, claimedId: underThisId ? loose.id : null,
       dev, phone: envelope.phone, n: loose.n, author: actor.id, sv: Math.min(loose.sv, INTEGER_LIMIT), kind: loose.kind,
-      object: operation?.object ?? null, sheet: operation?.sheet ?? null,
+      object: idOf(loose.object), sheet: idOf(loose.sheet),
       hlcClaimed: loose.hlc, hlcEffective, body: received.body, bodyHash: hash, personal: received.personal,
       receivedAt, outcome: 'held', reason: null, detail: null,
     }
@@ -83,7 +83,7 @@ export async function applyReceived(tx: Transaction, actor: Actor, envelope: Pus
     }
     Object.assign(entry, underThisId ? { outcome: 'held', reason: 'id-reused' } : received.unread)
     answers.push([loose.n, entry.outcome, entry.reason])
-    unread.push(lateRow(entry, received, organisation))
+    unread.push(entry)
   }
 
   const applied = await applyOperations(tx, { actor, ver: stamp.ver, receivedAt }, toApply.map(item => item.stamped))
@@ -117,13 +117,10 @@ async function findDevice(tx: Transaction, actor: Actor, claimed: string): Promi
   return { dev: own, row: rows.find(row => row.dev === own) }
 }
 
-function lateRow(entry: LedgerEntry, { loose }: Received, organisation: string): RowChange {
-  const object = [loose.object, loose.sheet].find(name => typeof name === 'string') as string | undefined
-  const data: LateData = {
-    op: entry.id, kind: entry.kind, body: entry.body.body ?? entry.body, reason: entry.detail ? `${entry.reason}: ${entry.detail}` : entry.reason!,
-    author: entry.author, dev: entry.dev, at: typeof loose.at === 'string' ? loose.at : entry.receivedAt,
-  }
-  return { t: 'late', id: entry.id, scope: organisation, object: object ?? organisation, gone: false, data: data as unknown as Record<string, unknown> }
+/** The id that an operation names, where it is one; also of an operation that cannot be read otherwise. */
+function idOf(named: unknown): string | null {
+  const id = idSchema.safeParse(named)
+  return id.success ? id.data : null
 }
 
 /** What the office sees of the phone: what it still owes, since when, and how far its clock is off. */

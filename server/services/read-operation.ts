@@ -53,7 +53,7 @@ export function readOperation(raw: unknown): Received {
 
 /** The same operation as text, for one that the database would not take in its own shape. */
 export function asText(received: Received): Received {
-  return { ...received, body: { text: JSON.stringify(received.body) }, operation: null, unread: { outcome: 'held', reason: 'error', detail: null } }
+  return { ...received, body: { at: received.loose.at, text: JSON.stringify(received.body) }, operation: null, unread: { outcome: 'held', reason: 'error', detail: null } }
 }
 
 function malformed(detail: string): Unread {

@@ -2,7 +2,7 @@ import { and, eq, getTableColumns, inArray, notInArray, sql, type SQL } from 'dr
 import type { PgTable } from 'drizzle-orm/pg-core'
 import type { RecordKind } from '#shared/records/kinds'
 import { groupRows, kindOf, recordOf, sheetDocumentOf, type ObjectRows } from '#shared/sync/read-rows'
-import type { RowChange } from '#shared/sync/rows'
+import type { Row, RowChange } from '#shared/sync/rows'
 import type { Transaction } from '#server/database/client'
 import { rowState } from '#server/database/tables/row-state'
 import { sheets } from '#server/database/tables/sheets'
@@ -30,23 +30,41 @@ export const PROJECTIONS: Readonly<Record<RecordKind, 'table' | 'rows'>> = {
 }
 
 /** Writes the projections of every record that changed, in the same transaction as its rows. */
-export async function projectRows(tx: Transaction, organisation: string, changed: readonly RowChange[], ver: number): Promise<void> {
+export async function projectRows(tx: Transaction, organisation: string, changed: readonly RowChange[]): Promise<void> {
   const objects = [...new Set(changed.filter(touchesProjection).map(row => row.object))]
   if (objects.length === 0) return
   const rows = await tx.select().from(rowState)
     .where(and(eq(rowState.organisation, organisation), inArray(rowState.object, objects), notInArray(rowState.t, ['ev', 'set'])))
-  const sheetRows: (typeof sheets.$inferInsert)[] = []
-  const surveyRows: (typeof surveys.$inferInsert)[] = []
-  for (const group of groupRows(rows).values()) {
+  await storeProjections(tx, projectionsOf(organisation, rows))
+}
+
+export interface Projections { sheets: (typeof sheets.$inferInsert)[], surveys: (typeof surveys.$inferInsert)[] }
+
+/** What the tables for the office's lists say of these rows; all rows of a record must be among them. */
+export function projectionsOf(organisation: string, rows: readonly Row[]): Projections {
+  const shown = rows.filter(touchesProjection)
+  const versions = new Map<string, number>()
+  for (const row of shown) versions.set(row.object, Math.max(versions.get(row.object) ?? 0, row.ver))
+  const projections: Projections = { sheets: [], surveys: [] }
+  for (const [id, group] of groupRows(shown)) {
     const kind = kindOf(group)
-    if (kind === 'sheet') sheetRows.push(sheetRow(organisation, group, ver))
-    if (kind === 'survey') surveyRows.push(surveyRow(organisation, group, ver))
+    if (kind === 'sheet') projections.sheets.push(sheetRow(organisation, group, versions.get(id)!))
+    if (kind === 'survey') projections.surveys.push(surveyRow(organisation, group, versions.get(id)!))
   }
-  if (sheetRows.length > 0) {
-    await tx.insert(sheets).values(sheetRows).onConflictDoUpdate({ target: [sheets.organisation, sheets.id], set: excluded(sheets, ['organisation', 'id', 'createdAt']) })
+  return projections
+}
+
+/** Many statements of a few hundred rows: one statement takes no more than 65,535 values. */
+const ROWS_AT_ONCE = 500
+
+export async function storeProjections(tx: Transaction, projections: Projections): Promise<void> {
+  for (let from = 0; from < projections.sheets.length; from += ROWS_AT_ONCE) {
+    await tx.insert(sheets).values(projections.sheets.slice(from, from + ROWS_AT_ONCE))
+      .onConflictDoUpdate({ target: [sheets.organisation, sheets.id], set: excluded(sheets, ['organisation', 'id', 'createdAt']) })
   }
-  if (surveyRows.length > 0) {
-    await tx.insert(surveys).values(surveyRows).onConflictDoUpdate({ target: [surveys.organisation, surveys.id], set: excluded(surveys, ['organisation', 'id']) })
+  for (let from = 0; from < projections.surveys.length; from += ROWS_AT_ONCE) {
+    await tx.insert(surveys).values(projections.surveys.slice(from, from + ROWS_AT_ONCE))
+      .onConflictDoUpdate({ target: [surveys.organisation, surveys.id], set: excluded(surveys, ['organisation', 'id']) })
   }
 }
 
