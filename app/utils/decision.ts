@@ -19,3 +19,11 @@ export interface DecidedSheet {
 export function decisionNeedsReason(step: DecisionStep, { isFit, stopCount }: DecidedSheet): boolean {
   return TRANSITION_TABLE[step].needsReason || (step === 'accept' && (stopCount > 0 || isFit === false))
 }
+
+/**
+ * What an acceptance says of the sample: fit, or used in spite of what speaks against it, which the reason then explains.
+ * Other decisions leave what was said at hand-in.
+ */
+export function decidedFit(step: DecisionStep, sheet: DecidedSheet): boolean | null {
+  return step === 'accept' ? !decisionNeedsReason(step, sheet) : null
+}
