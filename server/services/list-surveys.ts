@@ -18,10 +18,20 @@ export async function listSurveys(tx: Transaction, actor: Actor): Promise<Survey
 export async function openSurvey(tx: Transaction, actor: Actor, surveyId: string): Promise<SurveyDetail> {
   const [view] = await surveyViews(tx, actor.organisationId, surveyId)
   if (!view) throw new Refusal('not-found', 404)
-  return view
+  return { ...view, codes: await codesIn(tx, actor.organisationId, view.planLines) }
 }
 
-async function surveyViews(tx: Transaction, organisation: string, surveyId?: string): Promise<SurveyDetail[]> {
+/** Codes of the workers and methods that plan lines name. */
+async function codesIn(tx: Transaction, organisation: string, lines: readonly PlanLine[]): Promise<Record<string, string>> {
+  const ids = [...new Set(lines.flatMap(({ workerId, methodId }) => [workerId, methodId].filter(id => id !== null)))]
+  const groups = groupRows(await recordRows(tx, organisation, ids))
+  return Object.fromEntries([...groups].flatMap(([id, rows]) => {
+    const code = (recordOf('worker', rows) ?? recordOf('method', rows))?.code
+    return code === undefined ? [] : [[id, code]]
+  }))
+}
+
+async function surveyViews(tx: Transaction, organisation: string, surveyId?: string): Promise<Omit<SurveyDetail, 'codes'>[]> {
   const found = await surveysOf(tx, organisation, surveyId)
   const ids = found.map(survey => survey.id)
   const records = groupRows(await recordRows(tx, organisation, [...ids, ...new Set(found.map(survey => survey.site))]))

@@ -136,4 +136,8 @@ export interface SurveyView {
 }
 
 /** GET /api/surveys/:surveyId: the survey and the samples that are planned in it. */
-export interface SurveyDetail extends SurveyView { planLines: Identified<PlanLine>[] }
+export interface SurveyDetail extends SurveyView {
+  planLines: Identified<PlanLine>[]
+  /** Codes of the workers and methods that the plan names, by their identity. */
+  codes: Record<string, string>
+}
