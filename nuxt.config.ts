@@ -41,7 +41,7 @@ export default defineNuxtConfig({
   routeRules: {
     '/field': { ssr: false, prerender: true },
     '/field/**': { ssr: false },
-    '/api/**': { headers: { 'cache-control': 'no-store' } },
+    '/api/**': { headers: { 'cache-control': 'no-store', 'content-security-policy': 'default-src \'none\'; frame-ancestors \'none\'' } },
     '/office/**': { headers: { 'cache-control': 'no-store' } },
     '/sign-in': { headers: { 'cache-control': 'no-store' } },
     '/sw.js': { headers: { 'cache-control': 'no-cache' } },

@@ -1,7 +1,7 @@
 // @ts-check
 // `npm test`: sets up all the tests need, runs the parts in order and counts.
 //
-//   npm test                        every part: lint, types, unit, nuxt, server, build, e2e
+//   npm test                        every part: lint, types, unit, nuxt, build, server, e2e
 //   npm test unit server            only these
 //   npm test -- e2e --grep offline  what follows the parts goes to Vitest or Playwright
 //
@@ -54,8 +54,8 @@ const parts = {
   types: () => check('nuxt typecheck', join('node_modules', 'nuxt', 'bin', 'nuxt.mjs'), ['typecheck']),
   unit: () => runVitest('unit'),
   nuxt: () => runVitest('nuxt'),
-  server: () => runVitest('server'),
   build: buildApp,
+  server: () => runVitest('server'),
   e2e: runBrowserTests,
 }
 
@@ -174,7 +174,11 @@ async function buildApp() {
  * @returns {Promise<Count>}
  */
 async function runVitest(project) {
-  if (project === 'server') await haveCluster()
+  if (project === 'server') {
+    await haveCluster()
+    // The server's tests ask the built app.
+    if (await ensureBuild(say)) say('Built for the tests.')
+  }
   const report = reportPath(project)
   const result = await runCommand(process.execPath, [
     join('node_modules', 'vitest', 'vitest.mjs'), 'run', '--project', project,

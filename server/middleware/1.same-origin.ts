@@ -1,5 +1,5 @@
 import { getRequestHeader } from 'h3'
-import { httpError } from '../utils/http-error'
+import { httpError, answerError } from '../utils/http-error'
 
 const READING = new Set(['GET', 'HEAD', 'OPTIONS'])
 
@@ -10,7 +10,7 @@ export default defineEventHandler((event) => {
   const origin = getRequestHeader(event, 'origin')
   const host = getRequestHeader(event, 'host')
   const isOwn = site !== undefined ? site === 'same-origin' : origin !== undefined && URL.canParse(origin) && new URL(origin).host === host
-  if (!isOwn) throw httpError('other-site', 403)
+  if (!isOwn) return answerError(event, httpError('other-site', 403))
   const hasBody = event.method !== 'DELETE'
-  if (hasBody && !/^application\/json\s*(;|$)/i.test(getRequestHeader(event, 'content-type') ?? '')) throw httpError('not-json', 415)
+  if (hasBody && !/^application\/json\s*(;|$)/i.test(getRequestHeader(event, 'content-type') ?? '')) return answerError(event, httpError('not-json', 415))
 })

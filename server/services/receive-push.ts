@@ -6,6 +6,7 @@ import { OFFICE_DEVICE } from './apply-office'
 import { applyReceived } from './apply-push'
 import { isDatabaseAway } from './database-away'
 import { asText, readOperation, type Received } from './read-operation'
+import { reasonOf } from './reason-of'
 import { Refusal } from './refusal'
 
 /** A push as it is read at the door: what the phone says of itself is checked, each operation is read for itself. */
@@ -57,10 +58,4 @@ export async function receivePush(inTransaction: InTransaction, actor: Actor, re
 
 function isOfTheBatch(error: unknown): boolean {
   return !(error instanceof Refusal) && !isDatabaseAway(error)
-}
-
-/** The driver's own words; Drizzle's repeat the statement with what people wrote. */
-function reasonOf(error: unknown): string {
-  if (!(error instanceof Error)) return String(error)
-  return error.cause instanceof Error ? error.cause.message : error.message.split('\n')[0]!.slice(0, 300)
 }

@@ -3,12 +3,12 @@ import { can } from '#shared/access/policy'
 import { findSession, type SessionUser } from '#server/services/sign-in'
 import { useDatabase } from './database'
 import { httpError } from './http-error'
+import { sessionIdOf } from './session-cookie'
 
 /** Who asks, by the session's row; null when nobody is signed in. */
 export async function findUser(event: H3Event): Promise<SessionUser | null> {
-  const session = await getUserSession(event)
-  const sessionId = session.secure?.sessionId
-  return typeof sessionId === 'string' ? findSession(useDatabase(), sessionId, new Date()) : null
+  const sessionId = await sessionIdOf(event)
+  return sessionId === undefined ? null : findSession(useDatabase(), sessionId, new Date())
 }
 
 /** @throws 401 when nobody is signed in, or the session was ended, expired or idle for too long */
