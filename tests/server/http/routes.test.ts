@@ -22,9 +22,9 @@ interface Row {
 const MISSING: Ids = { sheetId: '00000000-0000-7000-8000-00000000000a', surveyId: '00000000-0000-7000-8000-00000000000b', technicianId: '00000000-0000-7000-8000-00000000000c' }
 
 const pushBody = ({ sheetId, surveyId }: Ids) => ({
-  v: 1, dev: 'd_matrix', phone: 'p_matrix', label: 'Matrix', epoch: null, sv: 1, pending: 0, oldest: null, blobs: 0, cursor: 0, now: '2026-05-12T13:00:00.000Z',
+  v: 1, dev: `d_${sheetId.slice(-8)}`, phone: 'p_matrix', label: 'Matrix', epoch: null, sv: 1, pending: 0, oldest: null, blobs: 0, cursor: 0, now: '2026-05-12T13:00:00.000Z',
   ops: [sheetId, surveyId].map((object, index) => ({
-    id: `00000000-0000-7000-8000-${object.slice(-12)}`, n: Number.parseInt(object.slice(-10), 16) + 1, hlc: '0198000000000000', sv: 1, kind: 'reg.set', object, sheet: object,
+    id: `00000000-0000-7000-8000-${object.slice(-12)}`, n: 900 + index, hlc: '0198000000000000', sv: 1, kind: 'reg.set', object, sheet: object,
     at: '2026-05-12T13:00:00.000Z', enteredAt: '2026-05-12T13:00:00.000Z', zone: 'UTC', mono: null, offset: null, by: null, personal: null,
     body: { key: index === 0 ? 'task' : 'title', value: 'Taken over', base: null, resolves: false },
   })),
