@@ -65,7 +65,7 @@ function summariesOf(rows: readonly Row[], names: ReadonlyMap<string, string>, n
 function summaryOf(bundle: SheetBundle, names: ReadonlyMap<string, string>, changedVer: number, nowAt: string): SheetSummary {
   const { document, survey, worker, method, agents } = bundle
   const { sheet, standing } = document
-  const assessment = assessSheet(bundle, nowAt)
+  const { assessment, faults } = assessWithoutFail(bundle, nowAt)
   const attentions = assessment.findings.filter(finding => finding.severity === 'attention')
   return {
     id: document.id, number: sheet.number, kind: sheet.kind,
@@ -73,7 +73,7 @@ function summaryOf(bundle: SheetBundle, names: ReadonlyMap<string, string>, chan
     workerCode: worker?.code ?? null,
     technicianName: sheet.technicianId === null ? null : names.get(sheet.technicianId) ?? null,
     state: standing.state, progress: assessment.progress, isFit: standing.isFit,
-    stopCount: assessment.findings.filter(finding => finding.severity === 'stop').length,
+    stopCount: assessment.findings.filter(finding => finding.severity === 'stop').length + faults,
     attentionCount: attentions.length,
     openAttentionCount: attentions.filter(finding => finding.answer === null).length,
     conflictCount: document.conflicts.filter(conflict => conflict.isOpen).length,
@@ -83,5 +83,19 @@ function summaryOf(bundle: SheetBundle, names: ReadonlyMap<string, string>, chan
     startedAt: assessment.startedAt, stoppedAt: assessment.stoppedAt,
     handedInAt: standing.state === 'handed-in' ? standing.at : null,
     changedVer, zone: survey?.zone ?? 'UTC', ribbon: assessment.ribbon,
+  }
+}
+
+/**
+ * One sheet that the assessment cannot take must not hide the others: it is listed without its events, as one with a stop
+ * finding more, so that somebody opens it.
+ */
+function assessWithoutFail(bundle: SheetBundle, nowAt: string): { assessment: ReturnType<typeof assessSheet>, faults: number } {
+  try {
+    return { assessment: assessSheet(bundle, nowAt), faults: 0 }
+  }
+  catch (error) {
+    console.error(`Sheet ${bundle.document.id} could not be assessed: ${error instanceof Error ? error.message : String(error)}`)
+    return { assessment: assessSheet({ ...bundle, document: { ...bundle.document, events: [] }, siblings: [] }, nowAt), faults: 1 }
   }
 }

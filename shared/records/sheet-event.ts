@@ -89,8 +89,11 @@ export const findingAnswerSchema = z.object({ code: z.string().max(80), subject:
 /** The name given at hand-in, in place of ink. */
 export const signatureSchema = z.object({ name: lineSchema })
 
+/** Milliseconds between two instants of any calendar: a century is 3.2 times 10 to the 12. */
+const spanSchema = z.number().min(-1e15).max(1e15)
+
 /** The clock of the phone jumped while the page was in sight; raw times stay as they are. */
-export const clockJumpSchema = z.object({ wallMilliseconds: z.number(), monotonicMilliseconds: z.number() })
+export const clockJumpSchema = z.object({ wallMilliseconds: spanSchema, monotonicMilliseconds: spanSchema })
 
 /** Each type of event and the schema of its data. */
 export const SHEET_EVENTS = {

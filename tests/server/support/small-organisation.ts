@@ -48,6 +48,8 @@ export async function aSmallOrganisation(database: Database, name: string): Prom
 /** A person's phone as the server sees it: gives numbers and stamps, sends, and pulls into a map of rows. */
 export class TestPhone {
   n = 0
+  /** How many sheets this phone made. */
+  sheets = 0
   clock = Date.now()
   readonly rows = new Map<string, Row>()
   scopes: string[] = []
@@ -67,6 +69,7 @@ export class TestPhone {
   }
 
   newSheet(initial: Record<string, unknown> = {}, object: string = randomUUID()): OperationOf<'obj.new'> {
+    this.sheets++
     return this.operation('obj.new', object, { type: 'sheet', parent: this.organisation.surveyId, initial })
   }
 
