@@ -55,6 +55,7 @@ describe('the reader of import lines', () => {
     ['app/pages/field/index.vue', '<script setup lang="ts">\nconst { data } = useFetch(\'/api/x\')\n</script>', 'never fetch'],
     ['app/pages/office/index.vue', '<script setup lang="ts">\nimport type { Db } from \'~/local/db\'\n</script>', 'never ~/local'],
     ['app/pages/office/index.vue', '<script setup lang="ts">\nimport Dexie from \'dexie\'\n</script>', 'never ~/local'],
+    ['app/utils/format.ts', 'import { db } from \'~/local/db\'', 'no ~/local'],
     ['app/plugins/sync.client.ts', 'import { x } from \'~~/server/utils/x\'', 'app imports from app and shared'],
     ['server/api/sheets/index.get.ts', 'import { sheets } from \'#server/database/tables/sheets\'', 'no table'],
     ['server/api/sheets/index.get.ts', 'import other from \'./[sheetId].get\'', 'no other handler'],

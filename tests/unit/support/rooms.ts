@@ -36,7 +36,7 @@ const RULES: Rule[] = [
   { from: ['shared/types/'], rooms: ['shared/records/'], packages: ['#auth-utils'], says: 'shared/types imports shared/records' },
   { from: ['app/local/'], rooms: ['shared/'], packages: ['dexie', 'uuidv7'], says: 'app/local imports shared, dexie and uuidv7: no Vue, no Pinia, no screen' },
   { from: ['app/composables/', 'app/stores/'], rooms: ['shared/', 'app/local/', 'app/utils/', 'app/composables/', 'app/stores/'], packages: 'any', not: ['dexie', ...SERVER_ONLY], says: 'composables and stores import shared and ~/local: no server, no component' },
-  { from: ['app/utils/'], rooms: ['shared/'], packages: 'any', not: ['dexie', ...SERVER_ONLY], says: 'app/utils imports shared' },
+  { from: ['app/utils/'], rooms: ['shared/', 'app/components/', 'app/composables/'], packages: 'any', not: ['dexie', ...SERVER_ONLY], says: 'app/utils imports shared and the front rooms: no ~/local, no page' },
   { from: ['app/components/'], rooms: ['shared/', 'app/composables/', 'app/stores/', 'app/utils/'], packages: 'any', not: ['dexie', ...SERVER_ONLY], calls: FETCHING, says: 'components import shared, composables, stores and other components: never ~/local, never a fetch' },
   { from: ['app/pages/field/'], rooms: APP_ROOMS, packages: 'any', not: ['dexie', ...SERVER_ONLY], calls: FETCHING, says: 'field pages import from app and shared and never fetch: they work offline' },
   { from: ['app/pages/office/'], rooms: APP_ROOMS, except: ['app/local/'], packages: 'any', not: ['dexie', ...SERVER_ONLY], says: 'office pages import from app and shared, never ~/local' },
