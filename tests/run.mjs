@@ -32,7 +32,7 @@ if (tooOld !== null) {
 
 const { PortTaken, startAppServer } = await import('../drizzle/scripts/app-server.mjs')
 const { installPackages } = await import('../drizzle/scripts/debian-packages.mjs')
-const { checkout, dataFolder, ensureDataFolder, Explained, readSecrets, withLock } = await import('../drizzle/scripts/local-folder.mjs')
+const { checkout, dataFolder, ensureDataFolder, Explained, readSecrets, stopWaiting, withLock } = await import('../drizzle/scripts/local-folder.mjs')
 const { createDatabase, freePort, releaseCluster, restartCluster, startCluster } = await import('../drizzle/scripts/postgres.mjs')
 const { ensureBuild, ensureGeneratedTypes, ensurePackages, migrate, seedDemo } = await import('../drizzle/scripts/prepare.mjs')
 const { endRunningCommands, runCommand } = await import('../drizzle/scripts/run-command.mjs')
@@ -70,6 +70,7 @@ const { chosen, extraWords } = readWords(process.argv.slice(2))
 
 for (const signal of /** @type {const} */ (['SIGINT', 'SIGTERM', 'SIGHUP'])) {
   process.on(signal, () => {
+    stopWaiting()
     endRunningCommands(isStopRequested ? 'SIGKILL' : 'SIGTERM')
     isStopRequested = true
   })

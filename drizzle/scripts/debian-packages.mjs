@@ -3,7 +3,7 @@
 import { accessSync, constants, existsSync } from 'node:fs'
 import { delimiter, join } from 'node:path'
 import { Explained } from './local-folder.mjs'
-import { lastLines, runCommand } from './run-command.mjs'
+import { lastLines, runProtected } from './run-command.mjs'
 
 /**
  * Finds a program on the PATH or in Debian's system folders.
@@ -56,7 +56,7 @@ export async function installPackages(packages, { purpose, prepare, say }) {
   for (const step of steps) {
     const isUpdate = step.at(-1) === 'update'
     const [command, ...rest] = [...asRoot.prefix, 'env', ...environment, ...step]
-    const result = await runCommand(String(command), rest, { show: asRoot.isInteractive })
+    const result = await runProtected(String(command), rest, { show: asRoot.isInteractive })
     // One unreachable source makes an update fail although the package can be had; the install decides.
     if (result.code !== 0 && !isUpdate) {
       throw new Explained(`Installing ${packages.join(' and ')} failed:\n${lastLines(result)}\nTo do it by hand:\n${byHand}`)
@@ -72,7 +72,7 @@ async function waysToRoot() {
   if (process.getuid?.() === 0) return { prefix: [], isInteractive: false }
   const sudo = findProgram('sudo')
   if (sudo === null) return null
-  if ((await runCommand(sudo, ['-n', 'true'])).code === 0) return { prefix: [sudo, '-n'], isInteractive: false }
+  if ((await runProtected(sudo, ['-n', 'true'])).code === 0) return { prefix: [sudo, '-n'], isInteractive: false }
   if (process.stdin.isTTY && process.stdout.isTTY) return { prefix: [sudo], isInteractive: true }
   return null
 }

@@ -177,6 +177,13 @@ export function otherLeases() {
   return others
 }
 
+let isWaitingEnded = false
+
+/** From now on nobody waits for another process's long work; the lock of the database is short and is still waited for. */
+export function stopWaiting() {
+  isWaitingEnded = true
+}
+
 /**
  * Runs `work` while no other process of this checkout runs work under the same name.
  * @template T
@@ -205,6 +212,7 @@ export async function withLock(name, work, onWait) {
       rmSync(path, { force: true })
       continue
     }
+    if (isWaitingEnded && name !== 'postgres') throw new Explained('Stopped while waiting for another process.')
     if (!hasWaited) onWait?.()
     hasWaited = true
     await new Promise(resolve => setTimeout(resolve, 100))

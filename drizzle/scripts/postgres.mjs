@@ -14,7 +14,7 @@ import { join } from 'node:path'
 import { pathToFileURL } from 'node:url'
 import { installPackages } from './debian-packages.mjs'
 import { addLease, checkout, dataFolder, ensureDataFolder, Explained, isErrorWithCode, messageOf, otherLeases, readNote, readSecrets, removeLease, removeNote, withLock, writeNote } from './local-folder.mjs'
-import { lastLines, runCommand } from './run-command.mjs'
+import { lastLines, runProtected } from './run-command.mjs'
 
 /** The database `npm start` and `npm run dev` work in. Tests make their own. */
 export const MAIN_DATABASE = 'lapel'
@@ -266,7 +266,7 @@ async function chooseClusterFolder() {
   const account = clusterAccount(inCheckout)
   // PostgreSQL is not installed yet, so nothing can have been made yet.
   if (account === null) return inCheckout
-  const canReach = (await runCommand('test', ['-x', dataFolder], { uid: account.uid, gid: account.gid })).code === 0
+  const canReach = (await runProtected('test', ['-x', dataFolder], { uid: account.uid, gid: account.gid })).code === 0
   if (canReach) return inCheckout
   const hash = createHash('sha256').update(checkout).digest('hex').slice(0, 16)
   return join(SYSTEM_CLUSTERS, `lapel-${hash}`)
@@ -326,7 +326,7 @@ async function makeCluster(binaries, folder, adminPassword) {
       chownSync(half, owner.uid, owner.gid)
       chownSync(passwordFile, owner.uid, owner.gid)
     }
-    const made = await runCommand(join(binaries, 'initdb'), [
+    const made = await runProtected(join(binaries, 'initdb'), [
       '-D', half, '-U', ADMIN_ROLE, `--pwfile=${passwordFile}`, '--auth=scram-sha-256', '--encoding=UTF8', '--locale=C.UTF-8', '--no-instructions',
     ], { ...owner, env: cleanEnvironment() })
     if (made.code !== 0) throw new Explained(`The database could not be made in ${folder}:\n${lastLines(made)}`)
@@ -418,7 +418,7 @@ async function startServer(binaries, folder) {
     }
     const options = Object.entries(settings).map(([name, value]) => `-c ${name}='${value}'`).join(' ')
     const logStart = statSync(log, { throwIfNoEntry: false })?.size ?? 0
-    const started = await runCommand(join(binaries, 'pg_ctl'), ['-D', folder, '-l', log, '-w', '-t', '120', '-o', options, 'start'], { ...owner, env: cleanEnvironment() })
+    const started = await runProtected(join(binaries, 'pg_ctl'), ['-D', folder, '-l', log, '-w', '-t', '120', '-o', options, 'start'], { ...owner, env: cleanEnvironment() })
     if (started.code === 0) return port
     const said = existsSync(log) ? readFileSync(log).subarray(logStart).toString('utf8') : ''
     if (attempt < 5 && /Address already in use/i.test(said)) {
@@ -455,7 +455,7 @@ async function clearStaleNote(folder) {
  */
 async function stopServer(binaries, folder, mode = 'fast') {
   const owner = ownerOf(folder)
-  const stop = (/** @type {string} */ how) => runCommand(join(binaries, 'pg_ctl'), ['-D', folder, '-m', how, '-w', '-t', '60', 'stop'], { ...owner, env: cleanEnvironment() })
+  const stop = (/** @type {string} */ how) => runProtected(join(binaries, 'pg_ctl'), ['-D', folder, '-m', how, '-w', '-t', '60', 'stop'], { ...owner, env: cleanEnvironment() })
   const stopped = await stop(mode)
   if (stopped.code !== 0 && runningPort(folder) !== null) {
     const forced = await stop('immediate')
@@ -530,7 +530,7 @@ async function ensureRolesAndDatabase(binaries, folder, port, secrets) {
 async function resetAdminPassword(binaries, folder, password) {
   const owner = ownerOf(folder)
   await stopServer(binaries, folder)
-  const changed = await runCommand(join(binaries, 'postgres'), ['--single', '-D', folder, '-c', 'password_encryption=scram-sha-256', 'postgres'], {
+  const changed = await runProtected(join(binaries, 'postgres'), ['--single', '-D', folder, '-c', 'password_encryption=scram-sha-256', 'postgres'], {
     ...owner,
     env: cleanEnvironment(),
     input: `alter role ${ADMIN_ROLE} with password '${password}'\n`,
@@ -561,7 +561,7 @@ async function askAsAdmin(port, statement) {
  * @param {string} statement sent on the standard input, where no list of processes shows it
  */
 function psql(binaries, port, role, password, database, statement) {
-  return runCommand(join(binaries, 'psql'), ['-X', '-q', '-A', '-t', '-w', '-v', 'ON_ERROR_STOP=1', '-h', '127.0.0.1', '-p', String(port), '-U', role, '-d', database, '-f', '-'], {
+  return runProtected(join(binaries, 'psql'), ['-X', '-q', '-A', '-t', '-w', '-v', 'ON_ERROR_STOP=1', '-h', '127.0.0.1', '-p', String(port), '-U', role, '-d', database, '-f', '-'], {
     env: { ...cleanEnvironment(), PGPASSWORD: password, PGCONNECT_TIMEOUT: '10' },
     input: `${statement};\n`,
   })

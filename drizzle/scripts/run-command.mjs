@@ -16,7 +16,8 @@ const children = new Set()
  * Runs a program to its end. It gets its own process group, so that Ctrl-C reaches only us and we decide the order of stopping.
  * @param {string} command
  * @param {string[]} commandArguments
- * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, uid?: number, gid?: number, input?: string, show?: boolean, onLine?: (line: string) => void }} [options]
+ * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, uid?: number, gid?: number, input?: string, show?: boolean, isProtected?: boolean, onLine?: (line: string) => void }} [options]
+ *   `isProtected` keeps it from `endRunningCommands`: a database or a Debian package half made is worse than a wait;
  *   `show` gives the program this terminal, for a password prompt or long progress; `onLine` sees each line as it comes
  * @returns {Promise<CommandResult>}
  */
@@ -30,7 +31,7 @@ export function runCommand(command, commandArguments, options = {}) {
       detached: !options.show,
       stdio: options.show ? 'inherit' : 'pipe',
     })
-    children.add(child)
+    if (!options.isProtected) children.add(child)
     let output = ''
     let errors = ''
     let rest = ''
@@ -58,6 +59,16 @@ export function runCommand(command, commandArguments, options = {}) {
 }
 
 /**
+ * `runCommand` for what must not be ended midway.
+ * @param {string} command
+ * @param {string[]} commandArguments
+ * @param {Parameters<typeof runCommand>[2]} [options]
+ */
+export function runProtected(command, commandArguments, options = {}) {
+  return runCommand(command, commandArguments, { ...options, isProtected: true })
+}
+
+/**
  * @param {string} text
  * @param {(line: string) => void} onLine
  */
@@ -69,7 +80,7 @@ function passLines(text, onLine) {
 }
 
 /**
- * Sends a signal to every program `runCommand` still waits for, and to what those started.
+ * Sends a signal to every unprotected program `runCommand` still waits for, and to what those started.
  * @param {NodeJS.Signals} [signal]
  */
 export function endRunningCommands(signal = 'SIGTERM') {

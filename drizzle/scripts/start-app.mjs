@@ -11,7 +11,7 @@
 import { spawn } from 'node:child_process'
 import { join } from 'node:path'
 import { appEnvironment, PortTaken, startAppServer } from './app-server.mjs'
-import { checkout, Explained, processBirth, readSecrets } from './local-folder.mjs'
+import { checkout, Explained, processBirth, readSecrets, stopWaiting } from './local-folder.mjs'
 import { freePort, isPortFree, releaseCluster, startCluster } from './postgres.mjs'
 import { ensureBuild, ensurePackages, migrate, readDemoSignIns, seedDemo } from './prepare.mjs'
 import { endRunningCommands } from './run-command.mjs'
@@ -23,8 +23,6 @@ const DATABASE_WATCH_MILLISECONDS = 3_000
 class Stopped extends Error {}
 
 let isStopRequested = false
-/** Whether a running tool may be ended midway; a database being made or a Debian package being installed may not. */
-let mayInterrupt = true
 let hasCluster = false
 /** @type {(() => Promise<void>) | null} */
 let stopApp = null
@@ -70,7 +68,8 @@ export async function startApp(isDevelopment) {
 function requestStop() {
   const isAgain = isStopRequested
   isStopRequested = true
-  if (mayInterrupt) endRunningCommands(isAgain ? 'SIGKILL' : 'SIGTERM')
+  stopWaiting()
+  endRunningCommands(isAgain ? 'SIGKILL' : 'SIGTERM')
   end(null)
 }
 
@@ -166,10 +165,8 @@ async function startOnFreePort(settings, host, firstPort) {
 async function haveDatabase(isDevelopment) {
   const given = process.env.DATABASE_URL
   if (given) return { appUrl: given, ownerUrl: process.env.DATABASE_OWNER_URL || given, isDemo: process.env.LAPEL_DEMO === '1' }
-  mayInterrupt = false
   hasCluster = true
   const { ownerUrl, appUrl, startedHere, serverPid, log } = await startCluster({ who: isDevelopment ? 'npm run dev' : 'npm start', say })
-  mayInterrupt = true
   say(startedHere ? 'The database has started.' : 'The database was already running.')
   setInterval(() => {
     if (processBirth(serverPid) === null) end(`The database has stopped, so Lapel stops too. Its log is ${log}`)
