@@ -33,22 +33,29 @@ const numberedSchema = z.looseObject({ n: z.int().min(1) })
  */
 export function readOperation(raw: unknown): Received {
   const numbered = numberedSchema.safeParse(raw)
-  const { depth, longestText } = shapeOf(raw)
+  const { depth, longestText, isStorable } = shapeOf(raw)
   if (!numbered.success || depth > UNWRITABLE_DEPTH) throw new Refusal('invalid-request', 422, { issues: [{ path: 'ops', message: 'An operation cannot be received.' }] })
 
-  const kept = storable(numbered.data)
+  const kept = isStorable ? numbered.data : storable(numbered.data)
   const hash = operationHash(kept)
-  const asLoose = looseOperationSchema.safeParse(kept)
   const parts = partsOf(kept)
-  if (!asLoose.success) return { loose: standIn(kept, hash), ...parts, hash, operation: null, unread: malformed(messageOf(asLoose.error)) }
+  if (depth <= MAX_DEPTH && longestText <= MAX_TEXT) {
+    const whole = operationSchema.safeParse(kept)
+    if (whole.success && whole.data.sv <= SCHEMA_VERSION) return { loose: whole.data, ...parts, hash, operation: whole.data, unread: null }
+  }
+  return { ...parts, hash, operation: null, ...readLoosely(kept, hash, depth, longestText) }
+}
+
+/** Why an operation cannot be applied, and what can be said of it all the same. */
+function readLoosely(kept: z.infer<typeof numberedSchema>, hash: string, depth: number, longestText: number): { loose: LooseOperation, unread: Unread } {
+  const asLoose = looseOperationSchema.safeParse(kept)
+  if (!asLoose.success) return { loose: standIn(kept, hash), unread: malformed(messageOf(asLoose.error)) }
   const loose = asLoose.data
-  if (depth > MAX_DEPTH) return { loose, ...parts, hash, operation: null, unread: malformed(`Nested deeper than ${MAX_DEPTH}.`) }
-  if (longestText > MAX_TEXT) return { loose, ...parts, hash, operation: null, unread: malformed(`A text is longer than ${MAX_TEXT} characters.`) }
-  if (loose.sv > SCHEMA_VERSION) return { loose, ...parts, hash, operation: null, unread: { outcome: 'parked', reason: 'newer-schema', detail: null } }
+  if (depth > MAX_DEPTH) return { loose, unread: malformed(`Nested deeper than ${MAX_DEPTH}.`) }
+  if (longestText > MAX_TEXT) return { loose, unread: malformed(`A text is longer than ${MAX_TEXT} characters.`) }
+  if (loose.sv > SCHEMA_VERSION) return { loose, unread: { outcome: 'parked', reason: 'newer-schema', detail: null } }
   const whole = operationSchema.safeParse(loose)
-  return whole.success
-    ? { loose, ...parts, hash, operation: whole.data, unread: null }
-    : { loose, ...parts, hash, operation: null, unread: malformed(messageOf(whole.error)) }
+  return { loose, unread: malformed(whole.success ? '' : messageOf(whole.error)) }
 }
 
 /** The same operation as text, for one that the database would not take in its own shape. */

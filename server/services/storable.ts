@@ -1,3 +1,8 @@
+/** Whether PostgreSQL keeps the text as it is: no NUL in it, no half of a cut emoji. */
+export function isStorable(text: string): boolean {
+  return !text.includes('\u0000') && text.isWellFormed()
+}
+
 /**
  * A JSON value as PostgreSQL can keep it: without the character NUL, and with halves of cut emoji replaced. Everything else
  * stays as it was typed.

@@ -1,3 +1,4 @@
+import { sql } from 'drizzle-orm'
 import { index, integer, jsonb, pgTable, primaryKey, text, uuid } from 'drizzle-orm/pg-core'
 import { bytes, count, instant, organisationColumn } from '../columns'
 
@@ -31,6 +32,7 @@ export const op = pgTable('op', {
   primaryKey({ columns: [table.organisation, table.id] }),
   // Not unique: a phone whose storage went back in time sends the same number twice, and both are kept.
   index('op_device').on(table.organisation, table.dev, table.n),
-  index('op_claimed').on(table.organisation, table.claimedId),
+  // Partial: an id is hardly ever used twice, and every push asks whether one was.
+  index('op_claimed').on(table.organisation, table.claimedId).where(sql`${table.claimedId} is not null`),
   index('op_sheet').on(table.organisation, table.sheet, table.ver),
 ])
