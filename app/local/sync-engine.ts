@@ -63,7 +63,8 @@ export function createSyncEngine(store: FieldStore, options: SyncEngineOptions =
   let running: Promise<void> | null = null
   let stopRound: AbortController | null = null
   let batchSize: number | undefined
-  let watched: { n: number | null, since: number } = { n: null, since: 0 }
+  /** The oldest operation, and since when it has been the oldest while somebody answered. */
+  let watched: { n: number | null, since: number, isAnswered: boolean } = { n: null, since: 0, isAnswered: false }
   const { surroundings } = store
 
   function tell(change: Partial<SyncStatus>) {
@@ -151,7 +152,7 @@ export function createSyncEngine(store: FieldStore, options: SyncEngineOptions =
     const { oldestNumber } = await whatWaits(store)
     const now = surroundings.now()
     const answers = outcome.kind === 'done' || outcome.kind === 'busy'
-    if (oldestNumber === null || oldestNumber !== watched.n || !answers) watched = { n: oldestNumber, since: now }
+    if (oldestNumber !== watched.n || !answers || !watched.isAnswered) watched = { n: oldestNumber, since: now, isAnswered: answers }
     const isStuck = oldestNumber !== null && answers && now - watched.since >= STUCK_AFTER_MILLISECONDS
     tell({ stuckSinceMilliseconds: isStuck ? watched.since : null })
     if (isStuck) batchSize = 1
