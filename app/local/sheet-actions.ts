@@ -214,8 +214,9 @@ export function createSheetActions(store: () => FieldStore, sheetId: () => strin
     },
 
     async handIn(input: { fit: boolean, reason: string | null, name: string }): Promise<void> {
-      const { bundle, refusedSteps } = here()
+      const { bundle, assessment, refusedSteps } = here()
       if (!input.fit && !input.reason?.trim()) throw new InvalidChange('Say why the sample is not fit to use.')
+      if (input.fit && assessment && !assessment.canHandInAsFit) throw new InvalidChange('A stop finding or a gap stands, so this sample cannot be handed in as fit. Hand it in as not fit, with the reason.')
       if (!input.name.trim()) throw new InvalidChange('Give your name in place of a signature.')
       await write([
         event('signature', { name: input.name.trim() }),
