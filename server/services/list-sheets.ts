@@ -42,6 +42,8 @@ function hasSeverity(summary: SheetSummary, severity: SheetListQuery['severity']
     case 'attention': return summary.attentionCount > 0
     case 'any': return summary.stopCount + summary.attentionCount > 0
     case 'none': return summary.stopCount + summary.attentionCount === 0
+    case 'conflict': return summary.conflictCount > 0
+    case 'late': return summary.lateCount > 0
   }
 }
 

@@ -32,7 +32,8 @@ export const sheetListQuerySchema = z.strictObject({
   state: z.union([sheetStateSchema, z.literal('all'), z.literal('to-review')]).default('to-review'),
   survey: idSchema.optional(),
   technician: idSchema.optional(),
-  severity: z.enum(['stop', 'attention', 'any', 'none']).optional(),
+  /** What stands against a sheet; two differing values and changes kept beside it count apart from the findings. */
+  severity: z.enum(['stop', 'attention', 'any', 'none', 'conflict', 'late']).optional(),
   q: z.string().max(100).optional(),
   sort: z.enum(['findings', 'handed-in', 'number', 'worker', 'state']).default('findings'),
   direction: z.enum(['asc', 'desc']).optional(),
