@@ -106,7 +106,7 @@ describe('OfficeLate and OfficeHistory', () => {
       },
     })
     expect(history.findAll('tbody td').map(cell => wordsOf(cell.element))).toEqual([
-      '3 Mar 2026, 15:00:00', '3 Mar 2026, 14:50:00 clock 10 min ahead', '3 Mar 2026, 19:30:00', 'First Technician First phone',
+      '3 Mar 2026, 15:00:00 clock 10 min ahead by the server’s 14:50:00', '3 Mar 2026, 19:30:00', 'First Technician First phone',
       'Handed in as fit', expect.stringContaining('Refused'),
     ])
   })
