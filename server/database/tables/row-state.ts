@@ -15,5 +15,5 @@ export const rowState = pgTable('row_state', {
 }, table => [
   primaryKey({ columns: [table.organisation, table.t, table.id] }),
   index('row_feed').on(table.organisation, table.scope, table.ver, table.t, table.id),
-  index('row_object').on(table.organisation, table.object),
+  index('row_object').on(table.organisation, table.object, table.t),
 ])

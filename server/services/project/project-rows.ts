@@ -1,8 +1,8 @@
-import { and, eq, getTableColumns, inArray, notInArray, sql, type SQL } from 'drizzle-orm'
+import { and, eq, getTableColumns, inArray, sql, type SQL } from 'drizzle-orm'
 import type { PgTable } from 'drizzle-orm/pg-core'
 import type { RecordKind } from '#shared/records/kinds'
 import { groupRows, kindOf, recordOf, sheetDocumentOf, type ObjectRows } from '#shared/sync/read-rows'
-import type { Row, RowChange } from '#shared/sync/rows'
+import type { Row, RowChange, RowType } from '#shared/sync/rows'
 import type { Transaction } from '#server/database/client'
 import { rowState } from '#server/database/tables/row-state'
 import { sheets } from '#server/database/tables/sheets'
@@ -34,7 +34,7 @@ export async function projectRows(tx: Transaction, organisation: string, changed
   const objects = [...new Set(changed.filter(touchesProjection).map(row => row.object))]
   if (objects.length === 0) return
   const rows = await tx.select().from(rowState)
-    .where(and(eq(rowState.organisation, organisation), inArray(rowState.object, objects), notInArray(rowState.t, ['ev', 'set'])))
+    .where(and(eq(rowState.organisation, organisation), inArray(rowState.object, objects), inArray(rowState.t, SHOWN)))
   await storeProjections(tx, projectionsOf(organisation, rows))
 }
 
@@ -69,8 +69,10 @@ export async function storeProjections(tx: Transaction, projections: Projections
 }
 
 /** Events do not show in a projection; a sheet of a hundred readings is not projected a hundred times. */
+const SHOWN: RowType[] = ['obj', 'reg', 'state', 'conflict', 'late']
+
 function touchesProjection(row: RowChange): boolean {
-  return row.t !== 'ev' && row.t !== 'set'
+  return SHOWN.includes(row.t)
 }
 
 function sheetRow(organisation: string, group: ObjectRows, ver: number): typeof sheets.$inferInsert {
