@@ -5,6 +5,7 @@
 export function useAct() {
   const busy = ref(false)
   const problem = ref('')
+  const { notSaved } = useErrorText()
 
   /** @returns what the action gave, or undefined where it failed or another one is under way */
   async function run<T>(action: () => Promise<T>): Promise<T | undefined> {
@@ -16,7 +17,8 @@ export function useAct() {
     }
     catch (error) {
       console.error(error)
-      problem.value = wordsFor(error)
+      const words = notSaved(error)
+      problem.value = `${words.title}. ${words.message}`
       return undefined
     }
     finally {
@@ -25,11 +27,4 @@ export function useAct() {
   }
 
   return { busy, problem, run }
-}
-
-function wordsFor(error: unknown): string {
-  if (error instanceof Error && /quota/i.test(`${error.name} ${error.message}`)) {
-    return 'Not saved: this phone has no space left. Free some space and try again. What is typed is still here.'
-  }
-  return 'Not saved. What is typed is still here; try again.'
 }
