@@ -122,11 +122,11 @@ async function loadGrants(tx: Transaction, actor: Actor): Promise<Set<string>> {
 
 /** The crew of a survey is who may see it. */
 async function storeGrants(tx: Transaction, organisation: string, rows: readonly RowChange[], ver: number): Promise<void> {
-  for (const grant of grantsOf(rows)) {
-    const set = { ver, gone: grant.gone }
-    await tx.insert(grantScope).values({ organisation, person: grant.person, scope: grant.scope, ...set })
-      .onConflictDoUpdate({ target: [grantScope.organisation, grantScope.person, grantScope.scope], set })
-  }
+  const grants = grantsOf(rows).map(({ person, scope, gone }) => ({ organisation, person, scope, ver, gone }))
+  if (grants.length === 0) return
+  await tx.insert(grantScope).values(grants).onConflictDoUpdate({
+    target: [grantScope.organisation, grantScope.person, grantScope.scope], set: { ver, gone: sql`excluded.gone` },
+  })
 }
 
 /** Who may see which survey, as the rows of its crew say. */

@@ -16,8 +16,8 @@ export async function holdUnreadable(tx: Transaction, organisation: string, entr
   const known = new Map(owners.map(owner => [owner.id, owner]))
   const rows = entries.map(entry => unreadRow(entry, (_t, id) => known.get(id), organisation))
   await tx.insert(rowState).values(rows.map(row => ({ organisation, ...row, ver }))).onConflictDoNothing()
-  for (const object of new Set(rows.map(row => row.object))) {
-    await tx.update(sheets).set({ lateChanges: sql`${sheets.lateChanges} + ${rows.filter(row => row.object === object).length}`, ver })
-      .where(and(eq(sheets.organisation, organisation), eq(sheets.id, object)))
-  }
+  await tx.execute(sql`
+    update ${sheets} set late_changes = late_changes + held.count, ver = ${ver}::bigint
+    from (select object, count(*)::int as count from unnest(${sql.param(rows.map(row => row.object))}::uuid[]) as each(object) group by object) held
+    where organisation = ${organisation} and id = held.object`)
 }
