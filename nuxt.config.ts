@@ -1,4 +1,5 @@
-import { fieldChunk } from './app/field-chunk'
+import { chunkOf, modernDexie } from './app/browser-chunks'
+import { bundleReport } from './tests/bench/bundle-report'
 
 // Lapel's one configuration. The reasons for the odd lines stand in DEVELOPERS.md, "Known surprises".
 export default defineNuxtConfig({
@@ -52,11 +53,23 @@ export default defineNuxtConfig({
     typescript: { tsConfig: { include: ['../drizzle/**/*', '../tests/server/**/*'] } },
   },
   vite: {
-    build: { rollupOptions: { output: { manualChunks: fieldChunk } } },
+    build: { rollupOptions: { output: { manualChunks: chunkOf, chunkFileNames: '_nuxt/[name].[hash].js' } } },
+  },
+  hooks: {
+    'vite:extendConfig': (config, { isClient }) => {
+      if (isClient) config.plugins?.push(bundleReport('.nuxt/browser-bundle.json'), modernDexie())
+    },
+    // A phone must not fetch the office ahead of time: the service worker brings what the field needs.
+    'build:manifest': (manifest) => {
+      for (const item of Object.values(manifest)) {
+        item.prefetch = false
+        item.dynamicImports = []
+      }
+    },
   },
   typescript: {
     strict: true,
-    nodeTsConfig: { include: ['../*.config.ts', '../tests/*.mjs', '../tests/e2e/**/*', '../tests/bench/**/*', '../tests/screens/**/*', '../app/field-chunk.ts'] },
+    nodeTsConfig: { include: ['../*.config.ts', '../tests/*.mjs', '../tests/e2e/**/*', '../tests/bench/**/*', '../tests/screens/**/*', '../app/browser-chunks.ts'] },
     sharedTsConfig: { include: ['../tests/unit/**/*', '../tests/fixtures/**/*'] },
   },
   auth: {
@@ -85,6 +98,8 @@ export default defineNuxtConfig({
     },
     workbox: {
       globPatterns: ['**/*.{js,css,html,svg,png,woff2}'],
+      // Phones never load the office.
+      globIgnores: ['**/office.*'],
       navigateFallback: '/field',
       navigateFallbackAllowlist: [/^\/field(\/|$)/],
       navigateFallbackDenylist: [/^\/api\//],
