@@ -1,20 +1,20 @@
 import type { FieldSheet } from '~/composables/useFieldDay'
 
-export interface BoardGroup { key: string, title: string, sheets: FieldSheet[] }
+export interface BoardGroup { key: string, title: string, sheets: FieldSheet[], isDone: boolean }
 
-const GROUPS: readonly { key: string, title: string }[] = [
+const GROUPS: readonly { key: string, title: string, isDone?: boolean }[] = [
   { key: 'returned', title: 'Returned by the office' },
   { key: 'needs-you', title: 'Needs you' },
   { key: 'drawing', title: 'Drawing air' },
   { key: 'stopped', title: 'Stopped, to be finished' },
   { key: 'set-up', title: 'Being set up' },
-  { key: 'handed-in', title: 'Handed in' },
-  { key: 'office', title: 'With the office' },
+  { key: 'handed-in', title: 'Handed in', isDone: true },
+  { key: 'office', title: 'With the office', isDone: true },
 ]
 
 /** The board's groups in the order in which a day asks for them; empty ones are left out. */
 export function boardGroups(sheets: readonly FieldSheet[]): BoardGroup[] {
-  return GROUPS.map(group => ({ ...group, sheets: sheets.filter(sheet => groupOf(sheet) === group.key) })).filter(group => group.sheets.length > 0)
+  return GROUPS.map(group => ({ ...group, isDone: group.isDone ?? false, sheets: sheets.filter(sheet => groupOf(sheet) === group.key) })).filter(group => group.sheets.length > 0)
 }
 
 function groupOf({ bundle, assessment, needsYou }: FieldSheet): string {

@@ -18,6 +18,7 @@ export interface DemoIds {
   agent: (name: string) => string
   method: (code: string) => string
   sampler: (name: string) => string
+  planLine: (index: number) => string
   site: string
   surveyToday: string
   surveyReview: string
@@ -28,6 +29,7 @@ export function demoIds(organisationId: string): DemoIds {
   return {
     person: id('person'), worker: id('worker'), pump: id('pump'), calibrator: id('calibrator'),
     agent: id('agent'), method: id('method'), sampler: id('sampler'),
+    planLine: index => id('plan-line')(String(index)),
     site: id('site')('Dunmarrow Works'),
     surveyToday: id('survey')('fettling'),
     surveyReview: id('survey')('melting'),
@@ -102,11 +104,11 @@ export function demoOrganisationDrafts(organisationId: string, now: Date): SeedD
     }),
     ...[ids.surveyToday, ids.surveyReview].flatMap(survey => technicians.map((person): SeedDraft =>
       ({ kind: 'set.add', object: survey, sheet: null, at, body: { set: 'crew', element: person, meta: {} } }))),
-    ...planLines(organisationId, ids, now).map((line, index) => create('plan-line', namedId(organisationId, 'plan-line', String(index)), line, ids.surveyToday)),
+    ...planLines(ids, now).map((line, index) => create('plan-line', ids.planLine(index), line, ids.surveyToday)),
   ]
 }
 
-function planLines(organisationId: string, ids: DemoIds, now: Date) {
+function planLines(ids: DemoIds, now: Date) {
   const silica = {
     plannedOn: dayOf(now), agentIds: [ids.agent('Silica, crystalline, respirable (quartz, cristobalite, tridymite)')], methodId: ids.method('NMAM 7500'),
     samplerId: ids.sampler('Higgins-Dewell type respirable cyclone'), plannedFlowLitresPerMinute: 2.2, plannedMinutes: 420,

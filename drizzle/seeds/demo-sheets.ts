@@ -79,17 +79,17 @@ function today(scene: Scene, now: string): void {
   const survey = ids.surveyToday
   const shift = addMinutes(now, -200)
 
-  const running = hang(scene, silicaSheet(scene, orla, survey, 'TB-2601', 'D-101', 'Fettling of pump housings', shift), addMinutes(shift, 12), { pump: 'BR-0411', before: ['2.21', '2.20', '2.19'] })
+  const running = hang(scene, silicaSheet(scene, orla, survey, 'TB-2601', 'D-101', 'Fettling of pump housings', shift, { planLineId: ids.planLine(0) }), addMinutes(shift, 12), { pump: 'BR-0411', before: ['2.21', '2.20', '2.19'] })
   running.timer(addMinutes(shift, 12), 'start', ids.pump('BR-0411'))
   running.check(addMinutes(shift, 28), ids.pump('BR-0411'), '2.20', 16).activity(addMinutes(shift, 30), 'Cutting risers with the disc', addMinutes(shift, 95))
   running.conditions(addMinutes(shift, 35), 19, 100.8, 52)
 
-  const paused = hang(scene, silicaSheet(scene, orla, survey, 'TB-2602', 'D-107', 'Pedestal grinding', shift), addMinutes(shift, 18), { pump: 'BR-0412', before: ['2.18', '2.20', '2.22'] })
+  const paused = hang(scene, silicaSheet(scene, orla, survey, 'TB-2602', 'D-107', 'Pedestal grinding', shift, { planLineId: ids.planLine(2) }), addMinutes(shift, 18), { pump: 'BR-0412', before: ['2.18', '2.20', '2.22'] })
   paused.timer(addMinutes(shift, 18), 'start', ids.pump('BR-0412'))
   paused.check(addMinutes(shift, 34), ids.pump('BR-0412'), '2.19', 16)
   paused.timer(addMinutes(now, -14), 'pause', ids.pump('BR-0412'), 'lunch')
 
-  const stopped = hang(scene, silicaSheet(scene, tomas, survey, 'TB-2611', 'D-102', 'Knock-out, short job', shift, { plannedEndAt: addMinutes(now, -20) }), addMinutes(shift, 5), { pump: 'BR-0418', before: ['2.23', '2.21', '2.22'] })
+  const stopped = hang(scene, silicaSheet(scene, tomas, survey, 'TB-2611', 'D-102', 'Knock-out, short job', shift, { planLineId: ids.planLine(1), plannedEndAt: addMinutes(now, -20) }), addMinutes(shift, 5), { pump: 'BR-0418', before: ['2.23', '2.21', '2.22'] })
   stopped.timer(addMinutes(shift, 5), 'start', ids.pump('BR-0418'))
   stopped.activity(addMinutes(shift, 6), 'Knock-out grid', addMinutes(shift, 150))
   stopped.timer(addMinutes(now, -22), 'stop', ids.pump('BR-0418'))
@@ -97,7 +97,7 @@ function today(scene: Scene, now: string): void {
   hang(scene, silicaSheet(scene, tomas, survey, 'TB-2612', 'D-126', 'Moulding with resin sand', addMinutes(now, -10)), addMinutes(now, 20), { pump: 'TE-207', before: ['2.2', '2.25', '2.2'] })
 
   ines.sheet('TB-2621', survey, addMinutes(shift, -20), {
-    number: 'TB-2621', kind: 'area', air: 'pumped', areaName: 'Knock-out grid, north side', methodId: ids.method('NMAM 7500'), samplerId: ids.sampler(HD_CYCLONE),
+    number: 'TB-2621', planLineId: ids.planLine(4), kind: 'area', air: 'pumped', areaName: 'Knock-out grid, north side', methodId: ids.method('NMAM 7500'), samplerId: ids.sampler(HD_CYCLONE),
     agentIds: [ids.agent('Silica, crystalline, respirable (quartz, cristobalite, tridymite)')],
   })
   ines.sheet('TB-2629', survey, addMinutes(shift, 30), {
