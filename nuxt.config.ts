@@ -55,6 +55,11 @@ export default defineNuxtConfig({
   vite: {
     build: { rollupOptions: { output: { manualChunks: chunkOf, chunkFileNames: '_nuxt/[name].[hash].js' } } },
   },
+  typescript: {
+    strict: true,
+    nodeTsConfig: { include: ['../*.config.ts', '../tests/*.mjs', '../tests/e2e/**/*', '../tests/bench/**/*', '../tests/screens/**/*', '../app/browser-chunks.ts'] },
+    sharedTsConfig: { include: ['../tests/unit/**/*', '../tests/fixtures/**/*'] },
+  },
   hooks: {
     'vite:extendConfig': (config, { isClient }) => {
       if (isClient) config.plugins?.push(bundleReport('.nuxt/browser-bundle.json'), modernDexie())
@@ -66,11 +71,6 @@ export default defineNuxtConfig({
         item.dynamicImports = []
       }
     },
-  },
-  typescript: {
-    strict: true,
-    nodeTsConfig: { include: ['../*.config.ts', '../tests/*.mjs', '../tests/e2e/**/*', '../tests/bench/**/*', '../tests/screens/**/*', '../app/browser-chunks.ts'] },
-    sharedTsConfig: { include: ['../tests/unit/**/*', '../tests/fixtures/**/*'] },
   },
   auth: {
     // The field never waits for a session call; the office fetches it in its middleware.
