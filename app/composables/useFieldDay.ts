@@ -73,9 +73,10 @@ export function useFieldDay() {
   })
 
   const status = computed<'loading' | 'empty' | 'ready'>(() => {
-    if (!session.view) return 'loading'
-    if (surveys.value.length > 0 || sheets.value.length > 0) return 'ready'
-    return session.view.cursor.isComplete ? 'empty' : 'loading'
+    const { view } = session
+    // Half of a first download would show surveys without their crew: nothing is shown before all of it is here, but one's own work always is.
+    if (!view || (!view.cursor.isComplete && view.outbox.length === 0)) return 'loading'
+    return surveys.value.length > 0 || sheets.value.length > 0 ? 'ready' : 'empty'
   })
 
   return { status, surveys, sheets, planLines, due }

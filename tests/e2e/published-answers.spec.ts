@@ -56,6 +56,6 @@ test('flow, time and volume typed on a phone end with the published answers', as
     await expect(page.getByText((sampled.expected as { V_L: number }).V_L.toFixed(1), { exact: true }).first()).toBeVisible()
   }
   finally {
-    await phone.close()
+    await phone.close(test.info().outputPath('last.png'))
   }
 })

@@ -26,18 +26,25 @@ export async function startSheet(page: Page, input: { number: string, worker: st
 export async function readFlow(page: Page, sheetId: string, when: 'before' | 'after', readings: string[]): Promise<void> {
   await page.goto(`/field/sheets/${sheetId}/flow?when=${when}`)
   await expect(page.getByRole('group', { name: 'Keys for the reading' })).toBeVisible()
+  const inLine = page.getByRole('group', { name: /Is the sampler in line/ })
+  if (await inLine.isVisible()) {
+    // The sheet's own sampler is taken; the question folds into a sentence.
+    await inLine.getByRole('radio', { name: 'Yes' }).click()
+  }
   for (const [index, digits] of readings.entries()) await keepReading(page, digits, index + 1)
 }
+
+const STEPS = { Start: 'It started', Pause: 'It was paused', Resume: 'It went on', Stop: 'It stopped' } as const
 
 /** Notes a step of the run at the time it happened. */
 export async function noteTime(page: Page, sheetId: string, action: 'Start' | 'Pause' | 'Resume' | 'Stop', at: Date, reason?: string): Promise<void> {
   await page.goto(`/field/sheets/${sheetId}`)
   await page.getByRole('button', { name: /^(It started earlier|Other time)$/ }).first().click()
   const dialog = page.getByRole('dialog', { name: 'It happened at another time' })
-  await dialog.getByRole('radio', { name: action, exact: false }).first().check()
+  await dialog.getByRole('radio', { name: STEPS[action] }).check()
   const local = new Intl.DateTimeFormat('sv-SE', { timeZone: 'Europe/Dublin', dateStyle: 'short', timeStyle: 'short' }).format(at)
   await dialog.getByLabel('Day').fill(local.slice(0, 10))
-  await dialog.getByLabel('At', { exact: true }).fill(local.slice(11, 16))
+  await dialog.getByRole('textbox', { name: 'At', exact: true }).fill(local.slice(11, 16))
   if (reason) await dialog.getByLabel(/Reason of the pause|Note on it/).fill(reason)
   await dialog.getByRole('button', { name: 'Note it' }).click()
   await expect(dialog).toBeHidden()
