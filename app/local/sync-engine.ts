@@ -61,6 +61,7 @@ export function createSyncEngine(store: FieldStore, options: SyncEngineOptions =
   let failures = 0
   let isStarted = false
   let running: Promise<void> | null = null
+  let isAskedAgain = false
   let stopRound: AbortController | null = null
   let batchSize: number | undefined
   /** The oldest operation, and since when it has been the oldest while somebody answered. */
@@ -80,7 +81,11 @@ export function createSyncEngine(store: FieldStore, options: SyncEngineOptions =
     if (!isStarted || at >= timerAt) return
     clearTimeout(timer)
     timerAt = at
-    timer = setTimeout(() => { void run() }, milliseconds)
+    timer = setTimeout(() => {
+      // The appointment is kept: what is scheduled from here on is a new one, also while an earlier round still runs.
+      timerAt = Infinity
+      void run()
+    }, milliseconds)
   }
 
   function unschedule() {
@@ -88,8 +93,18 @@ export function createSyncEngine(store: FieldStore, options: SyncEngineOptions =
     timerAt = Infinity
   }
 
+  /** One round at a time; whoever asks while one runs gets another one after it, for what that one was too early to see. */
   function run(): Promise<void> {
-    return running ??= round().finally(() => { running = null })
+    if (running) {
+      isAskedAgain = true
+      return running
+    }
+    running = round().finally(() => {
+      running = null
+      if (isAskedAgain) schedule(0)
+      isAskedAgain = false
+    })
+    return running
   }
 
   async function round(): Promise<void> {
@@ -120,8 +135,14 @@ export function createSyncEngine(store: FieldStore, options: SyncEngineOptions =
   async function afterRound(outcome: RoundOutcome) {
     const network = networkAfter(outcome)
     tell({ network, ...(outcome.kind === 'done' ? { downloadProgress: null } : {}) })
-    await noteNetwork(network)
-    await watch(outcome)
+    try {
+      await noteNetwork(network)
+      await watch(outcome)
+    }
+    catch (error) {
+      // What the phone's storage would not take is only told again; the next round must be made all the same.
+      console.error('The state of sending could not be noted.', error)
+    }
     if (outcome.kind === 'done') {
       failures = 0
       if (isVisible()) schedule(POLL_MILLISECONDS)
@@ -205,7 +226,7 @@ export function createSyncEngine(store: FieldStore, options: SyncEngineOptions =
     },
     async sendNow() {
       failures = 0
-      if (running) await running
+      await running
       await offerAgain(store)
       await run()
     },

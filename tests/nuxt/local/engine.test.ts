@@ -1,7 +1,7 @@
 import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest'
 import { commit } from '~/local/commit'
 import { createSyncEngine, type SyncEngine, type SyncEngineOptions } from '~/local/sync-engine'
-import type { Transport } from '~/local/transport'
+import { NoAnswer, type Transport } from '~/local/transport'
 import { aPhone, forget, reading, startedSheet, TestServer, type TestPhone } from './phone'
 
 const opened: TestPhone[] = []
@@ -193,6 +193,66 @@ describe('the sync engine', () => {
     await sending
     expect(server.pushes).toHaveLength(1)
     expect(await one.store.db.outbox.count()).toBe(0)
+  })
+
+  it('goes on after a slow round, however many changes and networks came while it ran', async () => {
+    const one = phone()
+    const server = new TestServer()
+    const sheet = await startedSheet(one)
+    let release = () => {}
+    let gate: Promise<void> | null = new Promise<void>((resolve) => { release = resolve })
+    const slow: Transport = {
+      push: async (request) => { await gate; return server.push(request) },
+      pull: request => server.pull(request),
+    }
+    const engine = anEngine(one, slow)
+    engine.start()
+    appointments.splice(0, 1)[0]!.run()
+    await expect.poll(() => engine.status().isSending).toBe(true)
+    // The commit's own appointment comes due while the first round still waits for its answer.
+    await commit(one.store, [reading(sheet, 2)])
+    expect(appointments.map(item => item.milliseconds)).toEqual([1000])
+    appointments.splice(0, 1)[0]!.run()
+    gate = null
+    release()
+    await expect.poll(() => appointments.map(item => item.milliseconds)).toEqual([0])
+    await keepAppointment(one)
+    expect(server.ledger.size).toBe(2)
+    expect(appointments.map(item => item.milliseconds)).toEqual([5000])
+  })
+
+  it('tries again soon when the network comes back in the middle of a round that fails', async () => {
+    const one = phone()
+    const server = new TestServer()
+    await startedSheet(one)
+    let fail = () => {}
+    const hanging: Transport = {
+      push: () => new Promise((_resolve, reject) => { fail = () => reject(new NoAnswer('network')) }),
+      pull: request => server.pull(request),
+    }
+    const engine = anEngine(one, hanging)
+    engine.start()
+    appointments.splice(0, 1)[0]!.run()
+    await expect.poll(() => engine.status().isSending).toBe(true)
+    window.dispatchEvent(new Event('online'))
+    appointments.splice(0, 1)[0]!.run()
+    fail()
+    await expect.poll(() => appointments.map(item => item.milliseconds)).toEqual([0])
+  })
+
+  it('makes the next appointment although the phone could not note how this round went', async () => {
+    const one = phone()
+    const server = new TestServer()
+    await startedSheet(one)
+    const engine = anEngine(one, server)
+    vi.spyOn(console, 'error').mockImplementation(() => {})
+    server.mishaps = ['no-network']
+    engine.start()
+    const put = vi.spyOn(one.store.db.meta, 'put').mockRejectedValue(new Error('Full.'))
+    await keepAppointment(one)
+    put.mockRestore()
+    await keepAppointment(one)
+    expect(server.ledger.size).toBe(1)
   })
 
   it('takes no harm when two tabs send at once', async () => {
