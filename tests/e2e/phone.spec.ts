@@ -3,6 +3,7 @@ import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { chromium, expect, test, type BrowserContext, type Page } from '@playwright/test'
 import signIns from '../../drizzle/seeds/demo-sign-ins.json' with { type: 'json' }
+import { readStore } from './support/field-store'
 
 /*
  * What the phone promises, in a real browser with a profile on disk: a kill of the browser is a kill of the phone's app.
@@ -37,23 +38,6 @@ async function signIn(page: Page) {
   await page.getByLabel('Password').fill(technician.password)
   await page.getByRole('button', { name: 'Sign in' }).click()
   await page.waitForURL(/\/field(\/|$)/)
-}
-
-/** Reads a store of the person's database, as any page of this origin could. */
-async function readStore<T>(page: Page, store: string): Promise<T[]> {
-  return page.evaluate(async (name) => {
-    const found = (await indexedDB.databases()).find(one => one.name?.startsWith('f:'))
-    if (!found?.name) return []
-    const open = indexedDB.open(found.name)
-    const db = await new Promise<IDBDatabase>((resolve, reject) => { open.onsuccess = () => resolve(open.result); open.onerror = () => reject(open.error!) })
-    try {
-      const request = db.transaction(name).objectStore(name).getAll()
-      return await new Promise<unknown[]>((resolve, reject) => { request.onsuccess = () => resolve(request.result); request.onerror = () => reject(request.error!) })
-    }
-    finally {
-      db.close()
-    }
-  }, store) as Promise<T[]>
 }
 
 interface StoredRow { t: string, object: string, data: { type?: string, state?: string } }

@@ -15,10 +15,11 @@ export class Phone {
   context!: BrowserContext
   page!: Page
 
-  private constructor(readonly profile: string, private readonly baseURL: string | undefined) {}
+  private constructor(readonly profile: string, private readonly baseURL: string | undefined, private readonly locale: string) {}
 
-  static async open(baseURL: string | undefined): Promise<Phone> {
-    const phone = new Phone(mkdtempSync(join(tmpdir(), 'lapel-phone-')), baseURL)
+  /** @param locale the phone's language, which decides whether its pads write a point or a comma */
+  static async open(baseURL: string | undefined, locale = 'en-IE'): Promise<Phone> {
+    const phone = new Phone(mkdtempSync(join(tmpdir(), 'lapel-phone-')), baseURL, locale)
     await phone.start()
     return phone
   }
@@ -27,7 +28,7 @@ export class Phone {
     this.context = await chromium.launchPersistentContext(this.profile, {
       executablePath: process.env.CHROMIUM ?? '/usr/bin/chromium',
       args: ['--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking', '--disable-component-update', '--disable-sync'],
-      viewport: { width: 390, height: 844 }, baseURL: this.baseURL, timezoneId: 'Europe/Dublin',
+      viewport: { width: 390, height: 844 }, baseURL: this.baseURL, timezoneId: 'Europe/Dublin', locale: this.locale,
     })
     this.context.setDefaultTimeout(10_000)
     this.page = this.context.pages()[0] ?? await this.context.newPage()

@@ -50,13 +50,27 @@ export async function noteTime(page: Page, sheetId: string, action: 'Start' | 'P
   await expect(dialog).toBeHidden()
 }
 
-/** Hands in as not fit, with the reason. */
-export async function handInNotFit(page: Page, sheetId: string, reason: string): Promise<void> {
+/** Starts the sheet of a plan line. */
+export async function startPlanned(page: Page, worker: string): Promise<string> {
+  await page.goto('/field')
+  const planned = page.getByRole('region', { name: /^Planned for today/ })
+  await planned.getByRole('listitem').filter({ hasText: worker }).getByRole('button', { name: /^Start/ }).click()
+  await page.waitForURL(/\/field\/sheets\/[0-9a-f-]+/)
+  return new URL(page.url()).pathname.split('/')[3]!
+}
+
+/** Hands in, as fit or as not fit with the reason. */
+export async function finishHandIn(page: Page, sheetId: string, answer: { isFit: true } | { isFit: false, reason: string }): Promise<void> {
   await page.goto(`/field/sheets/${sheetId}`)
   await page.getByRole('button', { name: /^Hand in/ }).first().click()
   const dialog = page.getByRole('dialog', { name: /^Hand in/ })
-  await dialog.getByRole('radio', { name: /Not fit/i }).check()
-  await dialog.getByLabel(/Why it is not fit/).fill(reason)
-  await dialog.getByRole('button', { name: 'Hand in as not fit' }).click()
+  if (answer.isFit) {
+    await dialog.getByRole('radio', { name: /^Fit to use/ }).check()
+  }
+  else {
+    await dialog.getByRole('radio', { name: /^Not fit/ }).check()
+    await dialog.getByRole('textbox', { name: /^Why it is not fit/ }).fill(answer.reason)
+  }
+  await dialog.getByRole('button', { name: answer.isFit ? 'Hand in as fit' : 'Hand in as not fit' }).click()
   await expect(dialog).toBeHidden()
 }
