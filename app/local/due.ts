@@ -12,26 +12,26 @@ export interface DueItem {
   what: DueKind
   at: string
   isOverdue: boolean
-  title: string
+  /** What it is, in words; the sheet is named beside it. */
+  words: string
 }
 
 const WORDS: Readonly<Record<DueKind, string>> = {
-  'flow-check': 'flow check due',
-  'planned-end': 'planned end',
-  'maximum-volume': 'maximum volume reached',
-  'minimum-volume': 'minimum volume reached',
-  'flow-after': 'flow after to be read',
-  'paused-long': 'paused for long',
+  'flow-check': 'Flow check',
+  'planned-end': 'Planned end',
+  'maximum-volume': 'Maximum volume',
+  'minimum-volume': 'Minimum volume',
+  'flow-after': 'Flow after',
+  'paused-long': 'Long pause',
 }
 
 /** What a sheet asks for, in no order. Reaching the minimum volume is good news: once it has passed it is no longer listed. */
 export function dueOf(bundle: SheetBundle, assessment: SheetAssessment, nowAt: string): DueItem[] {
   const { document } = bundle
   const now = Date.parse(nowAt)
-  const name = nameOf(bundle)
   const items: DueItem[] = []
   const add = (what: DueKind, at: string | null) => {
-    if (at !== null) items.push({ sheetId: document.id, what, at, isOverdue: Date.parse(at) <= now, title: `${name}: ${WORDS[what]}` })
+    if (at !== null) items.push({ sheetId: document.id, what, at, isOverdue: Date.parse(at) <= now, words: WORDS[what] })
   }
   switch (assessment.progress) {
     case 'running':
@@ -50,9 +50,4 @@ export function dueOf(bundle: SheetBundle, assessment: SheetAssessment, nowAt: s
       if (document.sheet.air === 'pumped') add('flow-after', assessment.stoppedAt)
   }
   return items.filter(item => item.what !== 'minimum-volume' || !item.isOverdue)
-}
-
-/** What a person calls the sheet: its number, else who or where. */
-export function nameOf({ document, worker }: SheetBundle): string {
-  return document.sheet.number || worker?.code || document.sheet.areaName || 'Sheet without a number'
 }

@@ -84,7 +84,7 @@ describe('the board', () => {
     expect(await read('2026-03-03T07:00:00.000Z')).toEqual([])
     await commit(one.store, [{ kind: 'ev.add', object: sheet, sheet, body: { type: 'timer', data: { action: 'start', pumpId: PUMP, reason: null }, corrects: null, reason: null } }])
     const due = await read('2026-03-03T09:05:00.000Z')
-    expect(due.find(item => item.what === 'planned-end')).toMatchObject({ at: '2026-03-03T09:00:00.000Z', isOverdue: true, title: 'A-1: planned end' })
+    expect(due.find(item => item.what === 'planned-end')).toMatchObject({ at: '2026-03-03T09:00:00.000Z', isOverdue: true, words: 'Planned end' })
     // Common practice: the first flow check is due 15 minutes after the start.
     expect(due.find(item => item.what === 'flow-check')).toMatchObject({ at: '2026-03-03T07:15:00.000Z', isOverdue: true })
   })
