@@ -35,6 +35,9 @@ export function useSheet(sheetId: MaybeRefOrGetter<string>) {
     { id: entry.id, what: operationWords(entry.op), reason: refusal(entry.outcome, entry.reason), code: entry.reason, outcome: entry.outcome }
   )))
 
+  /** The name under which this phone writes. */
+  const ownDev = computed(() => session.view?.dev ?? '')
+
   const canEdit = computed(() => {
     const { person, sheets } = session
     if (!bundle.value || !person || !sheets) return false
@@ -61,7 +64,7 @@ export function useSheet(sheetId: MaybeRefOrGetter<string>) {
     return session.fieldStore
   }
 
-  return { status, bundle, assessment, waiting, refusals, canEdit, ...createSheetActions(store, () => id.value, shown) }
+  return { status, bundle, assessment, waiting, refusals, canEdit, ownDev, ...createSheetActions(store, () => id.value, shown) }
 }
 
 let hasAsked = false

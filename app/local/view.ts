@@ -17,6 +17,8 @@ export interface FieldView {
   outbox: readonly OutboxEntry[]
   refusals: readonly Refusal[]
   cursor: Cursor
+  /** The name under which this phone writes. */
+  dev: string
 }
 
 interface LaidOver { base: ObjectBase | undefined, operations: string, group: ObjectRows | undefined, notApplied: readonly { id: string, reason: string }[] }
@@ -102,6 +104,7 @@ export function createViewReader(store: FieldStore): { read: () => Promise<Field
       outbox,
       refusals: refusalsOf(outbox, needing, notApplied),
       cursor,
+      dev,
     }
   }
 
