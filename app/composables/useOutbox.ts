@@ -1,3 +1,4 @@
+import { isOpenForField } from '#shared/access/policy'
 import { exportUnsent } from '~/local/export-unsent'
 import { markSeen as writeSeen } from '~/local/outbox'
 import type { Operation } from '#shared/sync/operations'
@@ -16,6 +17,9 @@ export interface WaitingEntry {
   /** The code behind the words. */
   code: string | null
 }
+
+/** A sheet on which two phones gave fields different values, and nobody has chosen yet. */
+export interface OpenConflicts { sheetId: string, name: string, fields: string[] }
 
 /** What waits on this phone, oldest first, and what was received and not applied. */
 export function useOutbox() {
@@ -42,8 +46,18 @@ export function useOutbox() {
     return { n, id: op.id, sheetId: op.sheet, sheetNumber, what: operationWords(op), at: op.at }
   }
 
+  const conflicts = computed<OpenConflicts[]>(() => (session.sheets?.source.sheets() ?? [])
+    .filter(document => isOpenForField(document.standing.state))
+    .map(document => ({
+      sheetId: document.id,
+      name: document.sheet.number ?? session.sheets?.bundle(document.id)?.worker?.code ?? document.sheet.areaName ?? 'Sheet without a number',
+      fields: document.conflicts.filter(conflict => conflict.isOpen).map(conflict => fieldInWords(conflict.field)),
+    }))
+    .filter(({ fields }) => fields.length > 0))
+
   return {
     entries,
+    conflicts,
     sendNow: () => sync.sendNow(),
     /** A copy of all of it as a file; the phone keeps its own. */
     async exportCopy(): Promise<Blob> {

@@ -110,7 +110,7 @@ export const FIELD_WORDS: Readonly<Record<SheetField, string>> = {
   groupId: 'Similar exposure group',
   jobTitle: 'Job',
   task: 'Task',
-  areaName: 'Area',
+  areaName: 'Place',
   shiftStartsAt: 'Shift starts',
   shiftEndsAt: 'Shift ends',
   usualDay: 'Usual day',
@@ -138,6 +138,11 @@ export const FIELD_WORDS: Readonly<Record<SheetField, string>> = {
   plannedEndAt: 'Planned end',
   uptakeMillilitresPerMinute: 'Uptake rate',
   archived: 'Archived',
+}
+
+/** A field's name in words; one that this version does not know by its own name. */
+export function fieldInWords(field: string): string {
+  return FIELD_WORDS[field as SheetField] ?? field
 }
 
 /** How far a stored trade value can be trusted. */

@@ -49,7 +49,7 @@ function whoFacts({ document, worker, survey }: SheetBundle, nameOf: NameOf, zon
   return [
     fact('Survey', survey?.title ?? null),
     fact('Kind of sample', SHEET_KIND_WORDS[sheet.kind]),
-    ...(isPersonal ? [fact('Worker', worker?.code ?? null), fact('Job', sheet.jobTitle ?? (worker?.jobTitle || null))] : [fact('Area', sheet.areaName)]),
+    ...(isPersonal ? [fact('Worker', worker?.code ?? null), fact('Job', sheet.jobTitle ?? (worker?.jobTitle || null))] : [fact('Place', sheet.areaName)]),
     fact('Task', sheet.task),
     ...(sheet.groupId ? [fact(FIELD_WORDS.groupId, nameOf(sheet.groupId))] : []),
     fact('Shift', shiftWords(sheet, zone)),

@@ -41,7 +41,7 @@ describe('the field layout', () => {
 
   it('has a place for the state of sending, and a way past the bars', async () => {
     const layout = await mountSuspended(FieldLayout)
-    expect(layout.get('header a[href="/field/waiting"]').text()).toContain('Saved here')
+    expect(layout.get('header a[href="/field/waiting"]').text()).toContain('Fetching')
     expect(layout.get('a[href="#main"]').text()).toBe('Skip to the page')
     expect(layout.get('main').attributes('id')).toBe('main')
   })
