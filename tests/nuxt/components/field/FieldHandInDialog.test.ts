@@ -73,10 +73,12 @@ describe('FieldHandInDialog', () => {
     const { words, radio, dialog, handIn, handedIn } = await openDialog({
       canBeFit: false, gaps: GAPS,
       findings: [aFinding('stop', 'The flow changed by 15 %.'), aFinding('attention', 'A pause has no reason.'), aFinding('note', 'Nothing of weight.'),
+        { ...aFinding('attention', 'Two values for one field.'), code: 'open-conflict' },
         aFinding('attention', 'Answered already.', { reason: 'Looked at', author: '', at: '2026-03-03T15:00:00.000Z' } as Finding['answer'])],
     })
     for (const title of ['No flow after was read.', 'No agent is chosen.', 'The flow changed by 15 %.', 'A pause has no reason. (needs a reason)']) expect(words()).toContain(title)
     expect(words()).not.toContain('Nothing of weight.')
+    expect(words()).not.toContain('Two values for one field.')
     expect(words()).not.toContain('Answered already.')
     expect(radio('Fit to use')).toBeUndefined()
     expect(radio('Not fit')!.element.checked).toBe(true)
