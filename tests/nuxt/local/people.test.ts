@@ -15,7 +15,8 @@ import { exportUnsent } from '~/local/export-unsent'
 import { openFieldStore } from '~/local/field-store'
 import { useSessionStore } from '~/stores/session'
 import { useSyncStore } from '~/stores/sync'
-import { aPerson, newSheet, reading, SURVEY } from './phone'
+import { syncRound } from '~/local/sync-round'
+import { aContext, aPerson, aPhone, newSheet, reading, setTask, startedSheet, SURVEY, TestServer } from './phone'
 import Dexie from 'dexie'
 
 const scopes: ReturnType<typeof effectScope>[] = []
@@ -111,6 +112,26 @@ describe('the composables of the field', () => {
     expect(copy.format).toBe('lapel-unsent')
     expect(copy.operations).toHaveLength(3)
     expect(useSyncStore().chip).toMatchObject({ kind: 'saved-here', count: 3 })
+  })
+
+  it('name the sheet and the field that two phones gave different values, where the bar sends the person', async () => {
+    const one = aPhone()
+    await rememberPerson(one.person)
+    const server = new TestServer(() => one.person.id)
+    const sheetId = await startedSheet(one, { number: 'A-7' })
+    const [first] = await commit(one.store, [setTask(sheetId, 'sanding')])
+    await syncRound(aContext(one, server))
+    const other = { ...(await commit(one.store, [setTask(sheetId, 'welding', first!.id)]))[0]!, id: one.store.surroundings.newId() }
+    await one.store.db.outbox.clear()
+    one.clock.milliseconds += 1000
+    await commit(one.store, [setTask(sheetId, 'grinding', first!.id)])
+    await server.push({ v: 1, dev: 'd_other', phone: 'p_other', label: '', epoch: null, sv: 1, pending: 1, oldest: null, blobs: 0, cursor: 0, now: other.at, ops: [other] })
+    await syncRound(aContext(one, server))
+    one.store.db.close()
+    const outbox = inScope(useOutbox)
+    await expect.poll(() => outbox.conflicts.value).toEqual([{ sheetId, name: 'A-7', fields: ['Task'] }])
+    expect(outbox.entries.value).toEqual([])
+    expect(useSyncStore().chip).toMatchObject({ kind: 'needs-you', count: 1 })
   })
 
   it('say when a sheet is not here', async () => {
