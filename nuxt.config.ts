@@ -1,4 +1,4 @@
-import { chunkOf, modernDexie } from './app/browser-chunks'
+import { chunkOf, modernDexie, zodWithoutJsonSchema } from './app/browser-chunks'
 import { bundleReport } from './tests/bench/bundle-report'
 
 // Lapel's one configuration. The reasons for the odd lines stand in DEVELOPERS.md, "Known surprises".
@@ -53,7 +53,9 @@ export default defineNuxtConfig({
     typescript: { tsConfig: { include: ['../drizzle/**/*', '../tests/server/**/*'] } },
   },
   vite: {
-    build: { rollupOptions: { output: { manualChunks: chunkOf, chunkFileNames: '_nuxt/[name].[hash].js' } } },
+    // Every component here is written with `setup`; Vue's other way of writing them stays out of the phone.
+    define: { __VUE_OPTIONS_API__: 'false' },
+    build: { minify: 'terser', terserOptions: { ecma: 2020, module: true, compress: { passes: 2 } }, rollupOptions: { output: { manualChunks: chunkOf, chunkFileNames: '_nuxt/[name].[hash].js' } } },
   },
   typescript: {
     strict: true,
@@ -62,7 +64,7 @@ export default defineNuxtConfig({
   },
   hooks: {
     'vite:extendConfig': (config, { isClient }) => {
-      if (isClient) config.plugins?.push(bundleReport('.nuxt/browser-bundle.json'), modernDexie())
+      if (isClient) config.plugins?.push(bundleReport('.nuxt/browser-bundle.json'), modernDexie(), zodWithoutJsonSchema())
     },
     // A phone must not fetch the office ahead of time: the service worker brings what the field needs.
     'build:manifest': (manifest) => {
@@ -137,7 +139,8 @@ export default defineNuxtConfig({
       permissionsPolicy: {
         'camera': ['self'],
         'screen-wake-lock': ['self'],
-        'web-share': ['self'],
+        // No desktop browser knows it and each one complains of it; the app shares no page.
+        'web-share': false,
         'publickey-credentials-get': ['self'],
         'publickey-credentials-create': ['self'],
         'geolocation': [],

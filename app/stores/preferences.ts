@@ -2,6 +2,9 @@
 export const THEMES = ['day', 'sun'] as const
 export type Theme = typeof THEMES[number]
 
+/** Each theme's name, as its switch says it. */
+export const THEME_WORDS: Readonly<Record<Theme, string>> = { day: 'Day', sun: 'Sun' }
+
 export const THEME_KEY = 'lapel-theme'
 
 /** How this person likes Lapel on this device. */

@@ -88,7 +88,7 @@ test('a whole day offline, from the plan line to the accepted sheet, through a k
     await expect(phone.page.locator('#air s').filter({ hasText: clock(notedAt) })).toBeVisible()
 
     await phone.page.getByRole('button', { name: 'Stop', exact: true }).click()
-    await expect(phone.page.getByRole('link', { name: 'Flow after' })).toBeVisible()
+    await expect(phone.page.getByRole('link', { name: 'Flow after', exact: true })).toBeVisible()
     await readFlow(phone.page, sheetId, 'after', ['1,96', '1,95', '1,94'])
     await phone.page.goto(`/field/sheets/${sheetId}`)
     await answerFindings(phone.page)
