@@ -1,7 +1,7 @@
 import { expect, test, type Page } from '@playwright/test'
 import { expectAccessible } from './support/axe'
 import { Phone, signInOf, unfold } from './support/phone'
-import { startSheet } from './support/sheet'
+import { noteTime, startSheet } from './support/sheet'
 import { watchPage, type PageWatch } from './support/page-watch'
 
 /*
@@ -63,8 +63,7 @@ test('every page of the phone', async ({ baseURL }) => {
     await expectAccessible(page, 'sign-in', { enhancedContrast: false })
     await phone.signIn('ines')
     const sheetId = await startSheet(page, { number: 'AX-1', worker: 'D-119', task: 'Ladle preparation', pump: 'BR-0412' })
-    await page.getByRole('region', { name: 'Air' }).getByRole('button', { name: 'Start', exact: true }).click()
-    await expect(page.getByRole('button', { name: 'Pause', exact: true })).toBeVisible()
+    await noteTime(page, sheetId, 'Start', new Date(Date.now() - 30 * 60_000))
     await page.goto('/field')
     const others = await page.locator('a[href^="/field/sheets/"]').evaluateAll(links => [...new Set(links.map(link => link.getAttribute('href')!.split('#')[0]!))])
     const scenes = [...fieldScenes(sheetId), ...others.map((path, index) => ({ name: `sheet ${index + 1} of Today`, path }))]
@@ -107,19 +106,22 @@ test('every page of the office', async ({ baseURL, browser }) => {
   expect(sheets.length).toBeGreaterThan(5)
   await page.goto('/office/surveys')
   const survey = await page.locator('a[href^="/office/surveys/"]').first().getAttribute('href')
-  const paths = ['/office', '/office/review', '/office/review?q=nothing-like-this', '/office/surveys', survey!, '/office/phones', '/office/review/00000000-0000-7000-8000-000000000000', '/office/nowhere', ...sheets.slice(0, 12)]
-  for (const theme of THEMES) {
-    await setTheme(page, theme)
-    for (const width of theme === 'day' ? [1440, 390] : [1440]) {
-      await page.setViewportSize({ width, height: 900 })
-      for (const path of paths) await test.step(`${theme}, ${width}: ${path}`, async () => {
-        await page.goto(path)
-        await expect(page.locator('[aria-busy=true]')).toHaveCount(0)
-        await expectAccessible(page, `${path} (${theme}, ${width})`, { enhancedContrast: false })
-        const overflow = await page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth)
-        expect.soft(overflow, `${path} at ${width}: sideways scroll`).toBe(0)
-      })
-    }
+  const paths = ['/office', '/office/review', '/office/review?q=nothing-like-this', '/office/surveys', survey!, '/office/phones', '/office/review/00000000-0000-7000-8000-000000000000', '/office/nowhere']
+  const looks: { theme: typeof THEMES[number], width: number, paths: string[] }[] = [
+    { theme: 'day', width: 1440, paths: [...paths, ...sheets.slice(0, 6)] },
+    { theme: 'day', width: 390, paths: [...paths, sheets[0]!] },
+    { theme: 'sun', width: 1440, paths: [...paths, sheets[0]!] },
+  ]
+  for (const look of looks) {
+    await setTheme(page, look.theme)
+    await page.setViewportSize({ width: look.width, height: 900 })
+    for (const path of look.paths) await test.step(`${look.theme}, ${look.width}: ${path}`, async () => {
+      await page.goto(path)
+      await expect(page.locator('[aria-busy=true]')).toHaveCount(0)
+      await expectAccessible(page, `${path} (${look.theme}, ${look.width})`, { enhancedContrast: false })
+      const overflow = await page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth)
+      expect.soft(overflow, `${path} at ${look.width}: sideways scroll`).toBe(0)
+    })
   }
   await context.close()
   expectClean(watch)
