@@ -3,6 +3,7 @@ import { leavePerson } from '~/local/device'
 /** Signing out on this phone. What waits stays on it, for the day its person signs in again. */
 export function useSignOut() {
   const session = useSessionStore()
+  session.followPhone()
   const sync = useSyncStore()
   const waiting = computed(() => session.view?.outbox.length ?? 0)
 

@@ -47,7 +47,7 @@ describe('headers', () => {
     if (path.startsWith('/api/')) return
     expect(headers['cross-origin-opener-policy']).toBe('same-origin')
     const permissions = String(headers['permissions-policy'])
-    for (const allowed of ['camera=(self)', 'screen-wake-lock=(self)', 'web-share=(self)']) expect(permissions).toContain(allowed)
+    for (const allowed of ['camera=(self)', 'screen-wake-lock=(self)']) expect(permissions).toContain(allowed)
     for (const forbidden of ['geolocation=()', 'microphone=()']) expect(permissions).toContain(forbidden)
   })
 
