@@ -83,7 +83,7 @@ test('a whole day offline, from the plan line to the accepted sheet, through a k
       // The button lets no second tap through for a moment.
       await correct.getByRole('button', { name: 'Correct it' }).click({ timeout: 1000 })
       await expect(correct).toBeHidden({ timeout: 1000 })
-    }).toPass()
+    }).toPass({ timeout: 20_000 })
     await expect(phone.page.getByText('Corrected: Pressed late')).toBeVisible()
     await expect(phone.page.locator('#air s').filter({ hasText: clock(notedAt) })).toBeVisible()
 
