@@ -13,8 +13,9 @@ interface Graph { getModuleInfo: (id: string) => { importers: readonly string[],
  */
 export function chunkOf(id: string, graph: Graph): string | undefined {
   const path = pathOf(id)
-  // Nuxt's generated lists of routes and layouts name every room; they stay where Rollup puts them.
-  if (isList(path)) return undefined
+  // Nuxt's generated lists of routes and layouts name every room, and ask each page for its route's settings (`?macro=true`);
+  // they stay where Rollup puts them, or the entry would bring every page.
+  if (isList(path) || id.includes('macro=true')) return undefined
   if (isOfficePage(path) || isForOfficeOnly(id, graph)) return 'office'
   if (/\/node_modules\/(dexie|uuidv7)\//.test(path) || /\/app\/(local|composables|stores|utils)\//.test(path)) return 'kit'
   if (path.includes('/node_modules/zod/') || /\/shared\/(domain|records|assessment|sync|access)\//.test(path)) return 'shared'
